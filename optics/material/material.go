@@ -1,0 +1,123 @@
+// Package material holds the complex refractive index m = n + ik (time dependence
+// exp(-i omega t), absorption k > 0) of what particles are made of, with density and what
+// else the optics asks about a material.
+//
+// The built-in materials are curves this project fitted to published measurements (see
+// [Material.Source], the fit errors in [Material.FitRMS] and [Material.FitWorst], and
+// [Material.FitNote] for what happens beyond the measurements). They are for the bulk at
+// about room temperature (water-ice: 266 K); colder metal conducts somewhat better.
+// Users' own tables come in through [ParseCSV] or [ParsePairs] and [NewTable].
+package material
+
+import (
+	"fmt"
+	"math"
+
+	"gonum.org/v1/gonum/interp"
+
+	"hazewright/optics/internal/planck"
+)
+
+// Material is one substance: refractive index, density and flags. Make it with [ByName] or
+// [NewTable]; it is safe for use by several goroutines.
+type Material struct {
+	Name    string
+	Density float64 // [kg/m3]
+
+	MinWavelength, MaxWavelength float64 // range of [Material.Index] [m]
+	DataMin, DataMax             float64 // range of the measured points behind it [m]
+
+	Source string // where the index was measured
+
+	// FitRMS and FitWorst are the relative errors of the fit on published points held
+	// out of it, the larger of those of n and of k; 0 for tables.
+	FitRMS, FitWorst float64
+	FitNote          string // errors of n and k apart, and what is used beyond DataMin and DataMax
+
+	Metal        bool    // conducts as a metal; its rods may have an oxide skin and scatter electrons at the surface
+	SurfaceRhoL  float64 // resistivity x electron mean free path [ohm m2], 0 = none or unknown
+	DefaultOxide float64 // thickness of the oxide skin when a study gives none [m], an assumption
+	Volatile     bool    // sublimes under Mars-like conditions
+
+	// StaticPermittivity is the relative permittivity that the index tends to at long
+	// wavelengths [1], +Inf for a conductor.
+	StaticPermittivity float64
+
+	n, k predictor
+	tail tail // nil: end values are held beyond DataMax, if MaxWavelength allows
+}
+
+// predictor gives a value at ln(wavelength/m).
+type predictor interface{ Predict(x float64) float64 }
+
+// tail continues an index beyond the last measured point.
+type tail interface {
+	index(wavelength float64) complex128
+}
+
+// RangeError says that an index was asked for outside the range of a material.
+type RangeError struct {
+	Material               string
+	Wavelength             float64 // wanted [m]
+	MinWavelength, MaxWave float64 // had [m]
+}
+
+func (e *RangeError) Error() string {
+	return fmt.Sprintf("material %s: refractive index needed at %.4g um, but known from %.4g um to %.4g um only",
+		e.Material, e.Wavelength*1e6, e.MinWavelength*1e6, e.MaxWave*1e6)
+}
+
+// Index returns the complex refractive index m = n + ik [1] at a wavelength in vacuum [m].
+// Between DataMin and DataMax it is the fitted curve or the table (linear in ln lambda);
+// beyond, the continuation that FitNote names. Error: a [*RangeError] outside
+// MinWavelength..MaxWavelength, and for a wavelength that is not a number.
+func (m *Material) Index(wavelength float64) (complex128, error) {
+	const slack = 1e-9 // relative: band edges computed from wavenumbers carry rounding
+	if !(wavelength >= m.MinWavelength*(1-slack) && wavelength <= m.MaxWavelength*(1+slack)) {
+		return 0, &RangeError{m.Name, wavelength, m.MinWavelength, m.MaxWavelength}
+	}
+	if wavelength > m.DataMax && m.tail != nil {
+		return m.tail.index(wavelength), nil
+	}
+	x := math.Log(min(max(wavelength, m.DataMin), m.DataMax))
+	return complex(m.n.Predict(x), m.k.Predict(x)), nil
+}
+
+// HeldShare returns the share [1] of the blackbody emission at temperature T [K] that
+// lies at wavelengths where the index is not known but held at its end values: 0 for most
+// built-in materials at thermal temperatures; for tables made with extend, everything outside
+// the rows.
+func (m *Material) HeldShare(temperature float64) float64 {
+	if !(temperature > 0) {
+		return 0
+	}
+	share := 0.0
+	if m.MinWavelength < m.DataMin {
+		share += planck.Fraction(m.DataMin, temperature)
+	}
+	if m.MaxWavelength > m.DataMax && m.tail == nil {
+		share += 1 - planck.Fraction(m.DataMax, temperature)
+	}
+	return share
+}
+
+// logSpline is a natural cubic spline in ln(wavelength) of the logarithm of a value.
+type logSpline struct {
+	spline interp.NaturalCubic
+	below  float64 // ln(m): constant below
+}
+
+func (s *logSpline) Predict(x float64) float64 { return math.Exp(s.spline.Predict(max(x, s.below))) }
+
+func newLogSpline(knotsUM, values []float64) *logSpline {
+	x := make([]float64, len(knotsUM))
+	for i, k := range knotsUM {
+		x[i] = math.Log(k * 1e-6)
+	}
+	s := &logSpline{below: x[0]}
+	// The knots are constants of this package, sorted and equal in number; a test builds every material.
+	if err := s.spline.Fit(x, values); err != nil {
+		panic("material: built-in curve: " + err.Error())
+	}
+	return s
+}

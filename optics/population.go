@@ -1,0 +1,164 @@
+package optics
+
+import (
+	"fmt"
+	"math"
+
+	"gonum.org/v1/gonum/integrate/quad"
+
+	"hazewright/optics/rod"
+)
+
+// Node is one size class of a [Population]: the size (radius of a sphere, length of a rod) [m],
+// the share of the number of particles (all sum to 1) and the mass of one particle [kg].
+type Node struct {
+	Size, Number, Mass float64
+}
+
+// Population is a kind of particle with its spread of sizes. It does not change once made and
+// is safe for use by several goroutines.
+type Population struct {
+	particle Particle
+	nodes    []Node
+	mass     float64 // [kg], mean of one particle
+	area     float64 // [m2], mean projected area
+}
+
+// NewPopulation returns the population of a particle kind. A spread above 1 is log-normal in
+// the airborne number, by Gauss-Hermite nodes in the logarithm of the size:
+//
+//	size_i = size exp(sqrt(2) ln(spread) t_i),   share_i = w_i/sqrt(pi)
+//
+// with enough nodes that Planck means change by less than 0.5 % when their number is
+// raised by half; nodes with a share below 1e-9 of the number and of the volume are left out.
+// Rods shorter than 10 diameters are counted, per length, as rods of 10 diameters, if they
+// hold less than 1 % of the mass. Errors: those of [Particle.Validate], and a spread that puts
+// more mass than that below 10 diameters.
+func NewPopulation(p Particle) (*Population, error) {
+	if err := p.Validate(); err != nil {
+		return nil, err
+	}
+	spread := math.Max(p.Spread, 1)
+	return newPopulation(p, nodeCount(spread))
+}
+
+// nodeCount returns the number of Gauss-Hermite nodes. Means over bands or spectra are converged;
+// at a single wavelength near the resonance of aluminium rods the size mean still carries a
+// few per cent (spread 1.2) to 30 % (spread 1.8).
+func nodeCount(spread float64) int {
+	s := math.Log(spread)
+	if s == 0 {
+		return 1
+	}
+	return 4 + int(math.Ceil(25*s))
+}
+
+func newPopulation(p Particle, count int) (*Population, error) {
+	median := p.Radius
+	if p.Shape == Rod {
+		median = p.Length
+	}
+	s := math.Log(math.Max(p.Spread, 1))
+	t, w := []float64{0}, []float64{math.Sqrt(math.Pi)}
+	if count > 1 {
+		t, w = make([]float64, count), make([]float64, count)
+		quad.Hermite{}.FixedLocations(t, w, math.Inf(-1), math.Inf(1))
+	}
+	pop := &Population{particle: p}
+	moment := p.volume(median) * math.Exp(4.5*s*s)
+	if p.Shape == Rod {
+		moment = p.volume(median) * math.Exp(0.5*s*s)
+	}
+	total, short := 0.0, 0.0
+	for i := range t {
+		size := median * math.Exp(math.Sqrt2*s*t[i])
+		number := w[i] / math.Sqrt(math.Pi)
+		volume := p.volume(size)
+		if count > 1 && number < 1e-9 && number*volume < 1e-9*moment {
+			continue
+		}
+		if p.Shape == Sphere && size <= 2*p.Oxide {
+			return nil, fmt.Errorf("spread %g puts spheres of radius %.3g nm into an oxide skin of %.3g nm", p.Spread, size*1e9, p.Oxide*1e9)
+		}
+		if p.Shape == Rod && size < rod.MinAspect*p.Diameter {
+			short += number * volume
+		}
+		pop.nodes = append(pop.nodes, Node{Size: size, Number: number, Mass: volume * p.Material.Density})
+		total += number
+	}
+	for i := range pop.nodes {
+		n := &pop.nodes[i]
+		n.Number /= total
+		pop.mass += n.Number * n.Mass
+		pop.area += n.Number * p.projectedArea(n.Size)
+	}
+	if share := short * p.Material.Density / (total * pop.mass); share > 0.01 {
+		return nil, fmt.Errorf("spread %g of length %.4g um puts %.2g %% of the mass below %d diameters (%.4g um), where the rod model does not hold; use a smaller spread or thinner rods",
+			p.Spread, p.Length*1e6, share*100, rod.MinAspect, rod.MinAspect*p.Diameter*1e6)
+	}
+	return pop, nil
+}
+
+// Particle returns the description the population was made from.
+func (p *Population) Particle() Particle { return p.particle }
+
+// Nodes returns the size classes, by rising size. The caller owns the slice.
+func (p *Population) Nodes() []Node { return append([]Node(nil), p.nodes...) }
+
+// MeanMass returns the number-mean mass of one particle [kg], outer dimensions.
+func (p *Population) MeanMass() float64 { return p.mass }
+
+// MeanProjectedArea returns the number-mean geometric cross-section of one randomly oriented
+// particle [m2], a quarter of its surface.
+func (p *Population) MeanProjectedArea() float64 { return p.area }
+
+// At returns the number-mean cross-sections of one particle at a wavelength in vacuum [m]. G is
+// weighted with scattering, Err with extinction; Method is that of the size class that
+// contributes most extinction. Errors: the material's range, or a size the method does not take.
+func (p *Population) At(wavelength float64) (CrossSection, error) {
+	var buffer [48]CrossSection
+	each := buffer[:0]
+	if len(p.nodes) > len(buffer) {
+		each = make([]CrossSection, len(p.nodes))
+	}
+	each = each[:len(p.nodes)]
+	if err := p.particle.at(wavelength, p.nodes, each); err != nil {
+		return CrossSection{}, err
+	}
+	var sum CrossSection
+	most := 0.0
+	for i, n := range p.nodes {
+		c := each[i]
+		sum.Sca += n.Number * c.Sca
+		sum.Abs += n.Number * c.Abs
+		sum.G += n.Number * c.G * c.Sca
+		sum.Err += n.Number * c.Err * c.Ext
+		if v := n.Number * c.Ext; v > most {
+			most, sum.Method = v, c.Method
+		}
+	}
+	sum.Ext = sum.Sca + sum.Abs
+	if sum.Sca > 0 {
+		sum.G /= sum.Sca
+	}
+	if sum.Ext > 0 {
+		sum.Err /= sum.Ext
+	}
+	return sum, nil
+}
+
+// Means holds mass-specific means [m2/kg]: absorption, extinction, scattering, and scattering
+// weighted with the cosine of its angle.
+type Means struct {
+	Abs, Ext, Sca, GSca float64
+}
+
+// Kappa returns the cross-sections per mass [m2/kg] at a wavelength [m]: those of [Population.At]
+// over [Population.MeanMass].
+func (p *Population) Kappa(wavelength float64) (Means, error) {
+	c, err := p.At(wavelength)
+	if err != nil {
+		return Means{}, err
+	}
+	return Means{Abs: c.Abs / p.mass, Ext: c.Ext / p.mass, Sca: c.Sca / p.mass, GSca: c.G * c.Sca / p.mass}, nil
+}
