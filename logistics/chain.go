@@ -148,7 +148,7 @@ func chainWarnings(d Demand, s Supply, m mineral, w Way, production float64) []W
 		}
 	}
 	if w.LandedPerWindowNext > w.LandedPerWindow*(1+1e-9) {
-		warn("supply.delivery.flights_per_window", "keeping the supply up needs %s a window, but a window lands %s: %.4g flights a window are needed",
+		warn("supply.delivery.flights_per_window", "keeping the supply up needs %s a window, but a window lands %s: %.0f flights a window are needed",
 			tonnes(w.LandedPerWindowNext), tonnes(w.LandedPerWindow), w.FlightsPerWindow)
 	}
 	if s.Route == Local {

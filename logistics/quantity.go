@@ -74,6 +74,25 @@ func withUnit(v float64, unit string) string {
 // year is the Julian year [s], 365.25 d of 86 400 s, used for texts and bounds.
 const year = 365.25 * 86400
 
-func years(t float64) string { return fmt.Sprintf("%.3g yr", t/year) }
+func years(t float64) string { return readable(t/year) + " yr" }
 
-func tonnes(m float64) string { return fmt.Sprintf("%.3g t", m/1000) }
+// tonnes writes a mass in t, kt, Mt or Gt, whichever reads best.
+func tonnes(m float64) string {
+	t, unit := m/1000, "t"
+	for _, next := range []string{"kt", "Mt", "Gt"} {
+		if t < 10e3 {
+			break
+		}
+		t, unit = t/1000, next
+	}
+	return readable(t) + " " + unit
+}
+
+// readable writes a number with three significant figures, without an exponent where it is of
+// ordinary size.
+func readable(v float64) string {
+	if v >= 100 && v < 1e7 {
+		return fmt.Sprintf("%.0f", v)
+	}
+	return fmt.Sprintf("%.3g", v)
+}

@@ -40,7 +40,7 @@ func (m *Model) warnings(s *Suspension, w *work, k float64) []string {
 			warn("rods turn at %.2g 1/s by thermal motion, slower than a shear of %g 1/s: they are not turned at random", d, usualShear)
 		}
 		if e, err := AligningField(ground, m.median); err == nil && stormField > e {
-			warn("if the rods conduct, a field of %.2g V/m stands them up, less than the %g V/m of a dust storm: they then fall faster than given and look different", e, stormField)
+			warn("if the rods conduct, a field of %.1f kV/m stands them up, less than the %g kV/m of a dust storm: they then fall faster than given and look different", e/1e3, stormField/1e3)
 		}
 	}
 	low, high := m.column.Gas().FittedRange()
