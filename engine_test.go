@@ -94,8 +94,11 @@ func TestEveryFigureHasAValueOrAnAllowedReason(t *testing.T) {
 		}
 	}
 	metal := r.Designs[0]
-	for _, id := range []string{"radio_loss_uhf", "radio_loss_ka", "ore_rate", "time_to_goal", "half_loss_time", "agglomeration_time"} {
+	for _, id := range []string{"radio_loss_uhf", "radio_loss_ka", "ore_rate", "half_loss_time", "agglomeration_time"} {
 		value(t, metal, id)
+	}
+	if v := r.Designs[1].Cases[1].Figures["time_to_goal"]; v.Null {
+		t.Errorf("%s at 1 %% sticking never reaches its goal: %s", r.Designs[1].Name, v.Why)
 	}
 }
 
