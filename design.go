@@ -8,7 +8,6 @@ import (
 
 	"hazewright/logistics"
 	"hazewright/optics/greenhouse"
-	"hazewright/settling"
 )
 
 // The sticking cases of a study that gives no sticking, worst first.
@@ -57,9 +56,7 @@ func (e *Engine) design(ctx context.Context, p *planet, d *Design) (*DesignResul
 		if !d.Fate.StickingGiven {
 			f.sticking = c.sticking
 		}
-		if err := f.fall(p); err != nil {
-			return nil, fmt.Errorf("fate: %w", err)
-		}
+		f.fall(p)
 		if err := f.supplyChain(p); err != nil {
 			return nil, fmt.Errorf("supply: %w", err)
 		}
@@ -75,7 +72,8 @@ func (e *Engine) design(ctx context.Context, p *planet, d *Design) (*DesignResul
 			}
 		}
 		if !d.Fate.StickingGiven {
-			r.Cases = append(r.Cases, CaseResult{Name: c.name, Sticking: c.sticking, Figures: figures, Limits: limits})
+			r.Cases = append(r.Cases, CaseResult{Name: c.name, Sticking: c.sticking, Figures: figures, Limits: limits,
+				Warnings: f.caseWarnings(), Losses: f.losses(), Programme: f.programme})
 		}
 	}
 	if !d.Fate.StickingGiven {
@@ -109,6 +107,7 @@ func (f *facts) light(kappa float64) error {
 	if g := f.design.Given.KappaThermal; g > 0 {
 		factor = g / mix(func(p *population) float64 { return p.thermal.Abs })
 	}
+	f.thermalFactor = factor
 	k := &f.kappa
 	k.thermalAbs = factor * mix(func(p *population) float64 { return p.thermal.Abs })
 	k.thermalExt = factor * mix(func(p *population) float64 { return p.thermal.Ext })
@@ -147,95 +146,24 @@ func (f *facts) light(kappa float64) error {
 	return nil
 }
 
-// fall follows the populations through the air and over the ground.
-func (f *facts) fall(p *planet) error {
-	if f.noBurden != "" {
-		return nil
-	}
-	f.fates = make([]fateFacts, len(f.populations))
-	for i, pop := range f.populations {
-		fate, err := f.settlingFate(p.study.Model)
-		if err != nil {
-			return err
-		}
-		s, err := settling.Suspend(p.column, pop.settlingPopulation(), fate, pop.Share*f.burdenValue)
-		if errors.Is(err, settling.ErrLayerField) {
-			f.stop(err.Error())
-			return nil
-		}
-		if err != nil {
-			return fmt.Errorf("%s: %w", pop.name, err)
-		}
-		life := s.Lifetime
-		if g := f.design.Given.Lifetime; g > 0 {
-			life = g
-		}
-		f.fates[i] = fateFacts{Suspension: s, lifetime: life}
-		if pop.volatile && f.design.Fate.Vapour == "dry" && pop.sublimation < s.FallTime {
-			f.stop(fmt.Sprintf("sublimes: in dry air a particle lasts %s, its fall %s",
-				FormatSI(pop.sublimation, shortTime(pop.sublimation), 3), FormatSI(s.FallTime, shortTime(s.FallTime), 3)))
-			return nil
-		}
-	}
-	return nil
-}
-
-// stop gives up on a burden, with the cause.
-func (f *facts) stop(cause string) { f.noBurden = cause }
-
-// shortTime returns a unit in which a time reads well.
-func shortTime(t float64) string {
-	switch {
-	case t < 600:
-		return "s"
-	case t < 2*86400:
-		return "h"
-	case t < 2*365.25*86400:
-		return "d"
-	}
-	return "yr"
-}
-
-// settlingFate turns the study's fate into what the column needs.
-func (f *facts) settlingFate(m Model) (settling.Fate, error) {
-	s := f.design.Fate
-	points := make([]settling.EddyPoint, len(s.EddyDiffusivity))
-	for i, q := range s.EddyDiffusivity {
-		points[i] = settling.EddyPoint{Height: q.Height, Value: q.Value}
-	}
-	eddy, err := settling.EddyTable(points)
-	if err != nil {
-		return settling.Fate{}, err
-	}
-	out := settling.Fate{
-		ReleaseHeight: s.ReleaseHeight, LiftHeight: s.LiftHeight, Eddy: eddy, Deposition: s.Deposition,
-		LiftTime: s.LiftTime, BurialTime: s.BurialTime,
-		Sticking: f.sticking, AggregateValue: s.AggregateValue, Charge: s.Charge, ReturnSingle: s.ReturnSingle,
-		FallSpeedFactor: m.FallSpeedFactor, KernelFactor: m.KernelFactor,
-	}
-	out.Sinks = append(out.Sinks, settling.Sink{Name: "frost burial", Rate: s.FrostBurial})
-	for _, k := range s.Sinks {
-		out.Sinks = append(out.Sinks, settling.Sink{Name: k.Name, Rate: k.Rate})
-	}
-	return out, nil
-}
-
 // supplyChain sizes release, production, delivery and schedule.
 func (f *facts) supplyChain(p *planet) error {
 	if f.noBurden != "" {
 		return nil
 	}
-	s := f.design.Supply
-	d := logistics.Demand{PlanetArea: f.area, Burden: f.burdenValue, GoalWarming: f.state.Warming}
 	if f.state.Warming <= 0 {
-		f.stop(fmt.Sprintf("the burden does not warm: %s", FormatSI(f.state.Warming, "K", 3)))
+		f.noProgramme = fmt.Sprintf("no programme: the burden does not warm (%s)", FormatSI(f.state.Warming, "K", 3))
 		return nil
 	}
 	if err := f.release(p); err != nil {
-		return err
+		f.noProgramme = "no programme: " + err.Error()
+		return nil
 	}
+	s := f.design.Supply
+	d := logistics.Demand{PlanetArea: f.area, Burden: f.burdenValue, GoalWarming: f.state.Warming}
 	for i, pop := range f.populations {
-		d.ReleaseSurvival = append(d.ReleaseSurvival, f.fates[i].usedSurvival)
+		fate := &f.fates[i]
+		d.ReleaseSurvival = append(d.ReleaseSurvival, fate.usedSurvival)
 		mass := pop.Share * f.burdenValue * f.area
 		stream := logistics.Stream{Name: pop.name, Material: pop.Material.Name, Population: i,
 			ParticleMass: pop.meanMass, Density: pop.density, Inventory: mass}
@@ -246,12 +174,13 @@ func (f *facts) supplyChain(p *planet) error {
 			d.Streams = append(d.Streams, stream)
 			continue
 		}
-		for _, q := range f.fates[i].Streams {
+		for _, q := range fate.Streams {
 			one := stream
 			one.Inventory = mass * q.MassShare
-			one.NewResidence, one.LiftedResidence = q.NewResidence, q.LiftedResidence
+			// Of a fixed layer only the time inside it counts as time aloft.
+			one.NewResidence, one.LiftedResidence = fate.inPlace*q.NewResidence, fate.inPlace*q.LiftedResidence
 			one.NewToGround, one.LiftedToGround = q.NewToGround, q.LiftedToGround
-			one.AgglomerationRate = q.AgglomerationRate
+			one.AgglomerationRate = q.AgglomerationRate / fate.inPlace
 			one.LiftTime, one.BurialTime, one.ReturnSingle = q.LiftTime, q.BurialTime, q.ReturnSingle
 			d.Streams = append(d.Streams, one)
 		}

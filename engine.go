@@ -44,15 +44,21 @@ type planet struct {
 
 // Assess takes every design of the study through the whole chain: optics, warming,
 // fate, supply, figures, limits. A design that cannot reach the goal is a result and
-// not an error. Errors: ctx ended; a world or particle outside what the stages are
-// valid for (the message names the design and the stage).
+// not an error. Errors: ctx ended; a [*StudyError] for a world or particle that the stages
+// are not valid for, see [Engine.Check].
 func (e *Engine) Assess(ctx context.Context, s *Study) (*Result, error) {
-	p, err := newPlanet(s)
+	p, err := checked(ctx, s)
 	if err != nil {
 		return nil, err
 	}
 	out := &Result{Study: s, Baseline: p.base, Methods: methods(p), Designs: make([]DesignResult, len(s.Designs))}
 	out.Warnings = append(out.Warnings, s.Warnings...)
+	if len(s.Uncertain) > 0 {
+		out.Warnings = append(out.Warnings, Warning{"uncertain", "read and checked, but nothing draws from it: an assessment is of the values as given"})
+	}
+	if len(s.Sweeps) > 0 {
+		out.Warnings = append(out.Warnings, Warning{"sweeps", "read and checked, but not run: an assessment is of the values as given"})
+	}
 	for _, text := range p.quick.Planet().Departures() {
 		out.Warnings = append(out.Warnings, Warning{"warming", "estimate outside its baseline: " + text})
 	}

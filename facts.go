@@ -21,8 +21,11 @@ type facts struct {
 	bands       greenhouse.Aerosol
 	kappa       mixMeans
 
+	thermalFactor float64 // on all thermal cross-sections
+
 	burdenValue float64 // [kg/m2]
 	noBurden    string  // why there is none; then nothing below applies
+	noProgramme string  // why there is a burden but no programme
 	state       greenhouse.State
 	low         greenhouse.Curve
 	lowState    greenhouse.State             // held low at the same burden
@@ -38,6 +41,7 @@ type facts struct {
 type fateFacts struct {
 	settling.Suspension
 	lifetime     float64 // the given lifetime, or that of the suspension [s]
+	inPlace      float64 // share of the airborne mass inside a fixed layer; 1 without one
 	usedSurvival float64 // share that survives the plume, as production is sized
 }
 
@@ -112,6 +116,9 @@ func (f *facts) shares(v func(*population, *fateFacts) float64) (float64, string
 func (f *facts) fallSpeed() (float64, string) {
 	var s float64
 	for _, p := range f.populations {
+		if p.noFall != nil {
+			return 0, p.noFall.Error()
+		}
 		s += p.Share * p.groundSpeed
 	}
 	return s, ""
@@ -140,8 +147,8 @@ func (f *facts) supply() float64 {
 }
 
 func (f *facts) groundStore() (float64, string) {
-	if f.noBurden != "" {
-		return 0, f.noBurden
+	if why := f.noFate(); why != "" {
+		return 0, why
 	}
 	var g float64
 	for i := range f.fates {
@@ -158,8 +165,19 @@ func (f *facts) residenceTotal() (float64, string) {
 	return (f.burdenValue + g) / f.supply(), ""
 }
 
+// noFate returns why what depends on the computed lifetime has no value, or "".
+func (f *facts) noFate() string {
+	if f.noBurden == "" && f.design.Given.Lifetime > 0 {
+		return "the lifetime is given: losses and ground are not computed"
+	}
+	return f.noBurden
+}
+
 // cycles of a mix: lifted mass over new supply, so supply-weighted.
 func (f *facts) cycles() (float64, string) {
+	if why := f.noFate(); why != "" {
+		return 0, why
+	}
 	return f.supplyMean(func(s *fateFacts) float64 { return s.Cycles })
 }
 
@@ -174,6 +192,9 @@ func (f *facts) supplyMean(v func(*fateFacts) float64) (float64, string) {
 }
 
 func (f *facts) agglomerationTime() (float64, string) {
+	if why := f.noFate(); why != "" {
+		return 0, why
+	}
 	rate, why := f.shares(func(_ *population, s *fateFacts) float64 { return s.agglomerationRate() })
 	switch {
 	case why != "":
@@ -187,6 +208,9 @@ func (f *facts) agglomerationTime() (float64, string) {
 func (f *facts) sublimationTime() (float64, string) {
 	shortest := math.Inf(1)
 	for _, p := range f.populations {
+		if p.volatile && p.noFall != nil {
+			return 0, p.noFall.Error()
+		}
 		if p.volatile {
 			shortest = math.Min(shortest, p.sublimation)
 		}
@@ -219,15 +243,27 @@ func (f *facts) layerField() (float64, string) {
 	return e, ""
 }
 
-func (f *facts) releaseSurvival() (float64, string)     { return f.at(f.survival) }
-func (f *facts) releasePointsNeeded() (float64, string) { return f.at(f.points) }
+func (f *facts) releaseSurvival() (float64, string) {
+	return f.programmed(func(*logistics.Programme) float64 { return f.survival })
+}
+func (f *facts) releasePointsNeeded() (float64, string) {
+	return f.programmed(func(*logistics.Programme) float64 { return f.points })
+}
 
 // programmed returns a number of the supply programme, or why there is none.
 func (f *facts) programmed(v func(*logistics.Programme) float64) (float64, string) {
-	if f.noBurden != "" {
-		return 0, f.noBurden
+	if why := f.notProgrammed(); why != "" {
+		return 0, why
 	}
 	return v(f.programme), ""
+}
+
+// notProgrammed returns why there is no programme, or "".
+func (f *facts) notProgrammed() string {
+	if f.noBurden != "" {
+		return f.noBurden
+	}
+	return f.noProgramme
 }
 
 func (f *facts) productionRate() (float64, string) {
@@ -237,8 +273,8 @@ func (f *facts) capacity() (float64, string) {
 	return f.programmed(func(p *logistics.Programme) float64 { return p.Capacity })
 }
 func (f *facts) oreRate() (float64, string) {
-	if f.noBurden != "" {
-		return 0, f.noBurden
+	if why := f.notProgrammed(); why != "" {
+		return 0, why
 	}
 	return f.programme.OreRate.Value, f.programme.OreRate.Why
 }
@@ -272,15 +308,15 @@ func (f *facts) numberRate() (float64, string) {
 }
 
 func (f *facts) timeToGoal() (float64, string) {
-	if f.noBurden != "" {
-		return 0, f.noBurden
+	if why := f.notProgrammed(); why != "" {
+		return 0, why
 	}
 	return f.programme.TimeToGoal.Value, f.programme.TimeToGoal.Why
 }
 
 func (f *facts) halfLossTime() (float64, string) {
-	if f.noBurden != "" {
-		return 0, f.noBurden
+	if why := f.notProgrammed(); why != "" {
+		return 0, why
 	}
 	return f.programme.HalfLossTime.Value, f.programme.HalfLossTime.Why
 }

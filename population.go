@@ -18,9 +18,9 @@ type population struct {
 	name     string
 
 	optics       *optics.Population
+	material     *material.Material
 	density      float64 // [kg/m3]
 	meanMass     float64 // of one particle aloft [kg]
-	metal        bool
 	volatile     bool
 	thermal      optics.Means // Planck means at the baseline surface temperature [m2/kg]
 	solar        optics.Means
@@ -32,6 +32,7 @@ type population struct {
 	spectrum     []SpectrumPoint
 	notes        []string
 
+	noFall      error   // why its fall cannot be computed; then the rest is zero
 	groundSpeed float64 // mass-weighted [m/s]
 	sublimation float64 // [s], volatile only
 }
@@ -48,7 +49,7 @@ const (
 func (e *Engine) population(p *planet, d *Design, i int) (*population, error) {
 	q := d.Particles[i]
 	name := describe(q)
-	key := fmt.Sprintf("%+v at %v", q, p.base.SurfaceTemperature)
+	key := opticsKey(p.study, q, p.base.SurfaceTemperature)
 	shared, ok := e.optics.get(key)
 	if !ok {
 		var err error
@@ -58,11 +59,23 @@ func (e *Engine) population(p *planet, d *Design, i int) (*population, error) {
 		e.optics.put(key, shared)
 	}
 	out := *shared
-	out.name = name
-	if err := out.falls(p); err != nil {
-		return nil, fmt.Errorf("fall of %s: %w", name, err)
-	}
+	out.Particle, out.name = q, name
+	out.noFall = out.falls(p)
 	return &out, nil
+}
+
+// opticsKey names all that the optics of a population depend on: not its share, and a
+// user's table by its hash.
+func opticsKey(s *Study, q Particle, planckTemperature float64) string {
+	q.Share = 0
+	q.Material.Rows = nil
+	hash := ""
+	for _, t := range s.Tables {
+		if t.File == q.Material.Table {
+			hash = t.SHA256
+		}
+	}
+	return fmt.Sprintf("%+v %s %v", q, hash, planckTemperature)
 }
 
 // describe names a population in plain words.
@@ -85,6 +98,17 @@ func materialOf(m MaterialRef) (*material.Material, error) {
 	return material.NewTable(m.Name, m.Density, rows, m.Extend)
 }
 
+// opticsParticle describes a population to the optics, with the material's own oxide skin
+// where the study gives none.
+func opticsParticle(q Particle, m *material.Material) optics.Particle {
+	oxide := q.Oxide
+	if oxide < 0 { // not given
+		oxide = m.DefaultOxide
+	}
+	return optics.Particle{Shape: q.Shape, Radius: q.Radius, Length: q.Length, Diameter: q.Diameter,
+		Oxide: oxide, Spread: q.Spread, SurfaceScattering: q.SurfaceScattering, Material: m}
+}
+
 // newPopulation works out the optics of a particle; planckTemperature is that of the
 // thermal means [K].
 func newPopulation(q Particle, planckTemperature float64) (*population, error) {
@@ -92,16 +116,19 @@ func newPopulation(q Particle, planckTemperature float64) (*population, error) {
 	if err != nil {
 		return nil, err
 	}
-	oxide := q.Oxide
-	if oxide < 0 { // not given
-		oxide = m.DefaultOxide
-	}
-	o, err := optics.NewPopulation(optics.Particle{Shape: q.Shape, Radius: q.Radius, Length: q.Length, Diameter: q.Diameter,
-		Oxide: oxide, Spread: q.Spread, SurfaceScattering: q.SurfaceScattering, Material: m})
+	o, err := optics.NewPopulation(opticsParticle(q, m))
 	if err != nil {
 		return nil, err
 	}
-	p := &population{Particle: q, optics: o, density: m.Density, meanMass: o.MeanMass(), metal: m.Metal, volatile: m.Volatile}
+	p := &population{Particle: q, optics: o, material: m, density: m.Density, meanMass: o.MeanMass(), volatile: m.Volatile}
+	for _, light := range []struct {
+		name        string
+		temperature float64
+	}{{"thermal emission", planckTemperature}, {"sunlight", optics.SolarTemperature}} {
+		if held := m.HeldShare(light.temperature); held > heldWarned {
+			p.notes = append(p.notes, fmt.Sprintf("%.2g %% of the %s is at wavelengths where the index of %s is not known and its end values are held", 100*held, light.name, m.Name))
+		}
+	}
 	if p.thermal, err = optics.PlanckMean(o, planckTemperature); err != nil {
 		return nil, err
 	}
@@ -136,6 +163,9 @@ func newPopulation(q Particle, planckTemperature float64) (*population, error) {
 	return p, nil
 }
 
+// heldWarned is the share of a spectrum on held index values above which it is said.
+const heldWarned = 0.01
+
 // lightSpeed in vacuum [m/s], exact by definition.
 const lightSpeed = 299792458.0
 
@@ -157,19 +187,29 @@ func bandsOf(o *optics.Population, edges []float64) (greenhouse.Band, error) {
 	return greenhouse.Band{Ext: b.Ext, Sca: b.Sca, GSca: b.GSca}, nil
 }
 
-// body returns the falling body of one size class.
-func (p *population) body(n optics.Node) settling.Body {
+// body returns the falling body of one size and mass. The few rods of a wide spread that
+// are shorter than the drag model takes fall as the shortest that it takes.
+func (p *population) body(size, mass float64) settling.Body {
 	if p.Shape == "rod" {
-		return settling.Body{Shape: settling.Rod, Length: n.Size, Diameter: p.Diameter, Mass: n.Mass}
+		return settling.Body{Shape: settling.Rod, Length: max(size, settling.MinAspect*p.Diameter), Diameter: p.Diameter, Mass: mass}
 	}
-	return settling.Body{Shape: settling.Sphere, Radius: n.Size, Mass: n.Mass}
+	return settling.Body{Shape: settling.Sphere, Radius: size, Mass: mass}
+}
+
+// typical returns the particle of median size, which stands for the population where one
+// particle has to.
+func (p *population) typical() settling.Body {
+	if p.Shape == "rod" {
+		return settling.RodOf(p.Length, p.Diameter, p.density)
+	}
+	return settling.SphereOf(p.Radius, p.density)
 }
 
 // settlingPopulation returns the size classes as falling bodies.
 func (p *population) settlingPopulation() settling.Population {
-	var out settling.Population
+	out := settling.Population{Typical: p.typical()}
 	for _, n := range p.optics.Nodes() {
-		out.Nodes = append(out.Nodes, settling.Member{Body: p.body(n), Number: n.Number})
+		out.Nodes = append(out.Nodes, settling.Member{Body: p.body(n.Size, n.Mass), Number: n.Number})
 	}
 	return out
 }
@@ -182,7 +222,7 @@ func (p *population) fallSpeedAt(pl *planet, height float64) (float64, error) {
 	}
 	var speed, mass float64
 	for _, n := range p.optics.Nodes() {
-		f, err := settling.FallSpeed(gas, pl.study.World.Gravity, p.body(n))
+		f, err := settling.FallSpeed(gas, pl.study.World.Gravity, p.body(n.Size, n.Mass))
 		if err != nil {
 			return 0, err
 		}
@@ -201,13 +241,6 @@ func (p *population) falls(pl *planet) error {
 	if !p.volatile {
 		return nil
 	}
-	p.sublimation, err = settling.SublimationTime(p.body(p.medianNode()), pl.study.World.AirTemperature)
+	p.sublimation, err = settling.SublimationTime(p.typical(), pl.study.World.AirTemperature)
 	return err
-}
-
-// medianNode returns the middle size class, which stands for the population where one
-// particle has to.
-func (p *population) medianNode() optics.Node {
-	nodes := p.optics.Nodes()
-	return nodes[len(nodes)/2]
 }

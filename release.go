@@ -6,24 +6,21 @@ import (
 	"hazewright/settling"
 )
 
-// plumeGoal is the share of a release that should leave its plume single, and
-// leastSurvival the least at which the study's own release points are used as given.
-const (
-	plumeGoal     = 0.9
-	leastSurvival = 0.5
-)
+// plumeGoal is the share of a release that should leave its plume single.
+const plumeGoal = 0.9
 
 // release finds how much of the release survives its own plume. With S the supply that
 // must survive and c S the crowding of the plumes at that rate, a release R leaves
 //
-//	S = R/(1 + c R),  so  R = S/(1 - c S)  and the survival is 1 - c S.
+//	S = R/(1 + c R),  so  R = S/(1 - c S)  and the survival is 1 - c S,
 //
-// Where that is under a half the study's release points do not do: more released only
-// clumps more. Then production is sized for the points that let 90 % survive, and a
-// warning says so. Populations are released apart, each through its share of the points.
+// and nothing does where c S is 1 or more. Where fewer than 90 % would survive at the
+// study's own release points, production is sized for as many points as let 90 % survive,
+// and a warning says so. Populations are released apart, each through its share of the
+// points. A clump keeps the aggregate value of its particles.
 func (f *facts) release(p *planet) error {
 	r := f.design.Supply.Release
-	ground, err := p.column.At(f.design.Fate.ReleaseHeight)
+	air, err := p.column.At(f.design.Fate.ReleaseHeight)
 	if err != nil {
 		return err
 	}
@@ -31,18 +28,18 @@ func (f *facts) release(p *planet) error {
 	short := false
 	for i, pop := range f.populations {
 		s := &f.fates[i]
-		body := pop.body(pop.medianNode())
-		kernel, err := settling.Kernel(ground, body)
+		body := pop.typical()
+		kernel, err := settling.Kernel(air, body)
 		if err != nil {
 			return err
 		}
-		charge, err := settling.ChargeFactor(ground, body, f.design.Fate.Charge)
+		charge, err := settling.ChargeFactor(air, body, f.design.Fate.Charge)
 		if err != nil {
 			return err
 		}
 		rate := pop.Share * f.burdenValue * f.area / s.lifetime
 		plume := settling.Plume{MassRate: rate, Points: max(1, float64(r.Points)*pop.Share), Mass: body.Mass,
-			Kernel: kernel * charge * p.study.Model.KernelFactor, Sticking: f.sticking,
+			Kernel: kernel * charge * p.study.Model.KernelFactor, Sticking: f.sticking * (1 - f.design.Fate.AggregateValue),
 			Wind: r.Wind, Radius: r.Radius, Spreading: r.Spreading}
 		first, err := settling.PlumeSurvival(plume)
 		if err != nil {
@@ -50,7 +47,7 @@ func (f *facts) release(p *planet) error {
 		}
 		own := max(0, 2-1/first) // 1 - c S
 		s.usedSurvival = own
-		if own < leastSurvival {
+		if own < plumeGoal {
 			s.usedSurvival, short = plumeGoal, true
 		}
 		plume.MassRate = rate / plumeGoal
@@ -66,8 +63,15 @@ func (f *facts) release(p *planet) error {
 	f.survival = survived / supply
 	if short {
 		f.warnings = append(f.warnings, Warning{"supply.release.points", fmt.Sprintf(
-			"the %d release points let %.0f %% survive the plume; production is sized for the %.0f points that let %.0f %% survive",
-			r.Points, 100*f.survival, f.points, 100*plumeGoal)})
+			"the %d release points let %s of the supply survive the plume; production is sized for the %.0f points that let %.0f %% survive",
+			r.Points, survivalText(f.survival), f.points, 100*plumeGoal)})
 	}
 	return nil
+}
+
+func survivalText(s float64) string {
+	if s == 0 {
+		return "no rate"
+	}
+	return fmt.Sprintf("%.0f %%", 100*s)
 }

@@ -46,7 +46,10 @@ type DesignResult struct {
 	Losses      []Loss
 	Warnings    []Warning
 
-	StickingCase string       // "" if sticking was given, else "if every touch sticks (100 %)"
+	NeverWarms bool    // no burden warms at all
+	LayerShare float64 // with a fixed layer, the share of the falling column's airborne mass inside it; 0 without one
+
+	StickingCase string       // "" if sticking was given, else "every touch sticks (100 %)"
 	Cases        []CaseResult // the sticking cases, worst first; empty if sticking was given
 
 	Curve      []CurvePoint         // warming against burden, placed as the study says
@@ -58,7 +61,7 @@ type DesignResult struct {
 	Outgoing   []float64            // outgoing thermal flux per band at the goal [W/m2]
 	Profile    []ProfilePoint       // of the airborne mass
 	FallSpeed  []HeightValue        // mass-weighted fall speed against height [m, m/s]
-	Programme  *logistics.Programme // nil if the goal is not reached
+	Programme  *logistics.Programme // nil if there is no burden, or one that does not warm
 }
 
 // CaseResult is one sticking case of a design whose study gives no sticking.
@@ -67,6 +70,10 @@ type CaseResult struct {
 	Sticking float64
 	Figures  map[string]FigureValue
 	Limits   []LimitResult
+
+	Warnings  []Warning            // of fate and supply in this case
+	Losses    []Loss               // nil if the goal is not reached
+	Programme *logistics.Programme // nil if there is none
 }
 
 // PopulationResult is one population's part.
@@ -75,6 +82,9 @@ type PopulationResult struct {
 	Share                                                       float64
 	Material                                                    string
 	Metal                                                       bool    // conducts as a metal
+	Conducts                                                    string  // whether a fibre of it conducts: "yes", "no" or "unknown"
+	Combustible                                                 string  // whether its fine dust burns in breathable air: the same
+	Oxide                                                       float64 // oxide skin, the material's own where the study gives none [m]
 	Density                                                     float64 // [kg/m3]
 	ParticleMass                                                float64 // mean [kg]
 	ProjectedArea                                               float64 // mean over directions, per mass [m2/kg]

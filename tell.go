@@ -2,6 +2,7 @@ package hazewright
 
 import (
 	"sort"
+	"strings"
 
 	"hazewright/settling"
 )
@@ -14,7 +15,9 @@ func (r *DesignResult) tell(p *planet, f *facts) error {
 	}
 	for i, pop := range f.populations {
 		x := PopulationResult{
-			Name: pop.name, Share: pop.Share, Material: pop.Material.Name, Metal: pop.metal, Density: pop.density, ParticleMass: pop.meanMass,
+			Name: pop.name, Share: pop.Share, Material: pop.Material.Name, Density: pop.density, ParticleMass: pop.meanMass,
+			Metal: pop.material.Metal, Conducts: string(pop.material.Conducts), Combustible: string(pop.material.Combustible),
+			Oxide:        opticsParticle(pop.Particle, pop.material).Oxide,
 			KappaThermal: pop.thermal.Abs, KappaThermalExt: pop.thermal.Ext, KappaSolarExt: pop.solar.Ext, KappaSolarAbs: pop.solar.Abs,
 			ProjectedArea: pop.optics.MeanProjectedArea() / pop.meanMass,
 			FallSpeed:     pop.groundSpeed, Spectrum: pop.spectrum,
@@ -26,9 +29,7 @@ func (r *DesignResult) tell(p *planet, f *facts) error {
 		x.OpticsMethod, x.OpticsError = peak.Method, peak.Err
 		if f.noBurden == "" {
 			x.Lifetime, x.Given = f.fates[i].lifetime, f.design.Given.Lifetime > 0
-			for _, w := range f.fates[i].Warnings {
-				r.warn("fate", "%s: %s", pop.name, w)
-			}
+			r.LayerShare += pop.Share * f.fates[i].layerShare()
 		}
 		for _, n := range pop.notes {
 			r.warn("optics", "%s: %s", pop.name, n)
@@ -46,11 +47,56 @@ func (r *DesignResult) tell(p *planet, f *facts) error {
 	r.Losses = f.losses()
 	r.Profile = f.profile()
 	r.Programme = f.programme
-	for _, w := range f.programme.Warnings {
-		r.warn(w.Field, "%s", w.Text)
-	}
-	r.Warnings = append(r.Warnings, f.warnings...)
+	r.Warnings = append(r.Warnings, f.caseWarnings()...)
 	return nil
+}
+
+// caseWarnings returns the warnings that depend on the sticking: those of fate and supply.
+func (f *facts) caseWarnings() []Warning {
+	if f.noBurden != "" {
+		return nil
+	}
+	var out []Warning
+	for i, pop := range f.populations {
+		for _, w := range f.fates[i].Warnings {
+			out = append(out, Warning{"fate", pop.name + ": " + w})
+		}
+	}
+	if f.sticking > 0 && f.design.Fate.AggregateValue < 1 && f.design.Given.Lifetime == 0 {
+		out = append(out, Warning{"fate.sticking", uncounted(f.design)})
+	}
+	out = append(out, f.warnings...)
+	if f.noProgramme != "" {
+		return append(out, Warning{"supply", f.noProgramme})
+	}
+	for _, w := range f.programme.Warnings {
+		out = append(out, Warning{w.Field, w.Text})
+	}
+	return out
+}
+
+// uncounted says which meetings of sticky particles are left out. The factors are those of
+// an independent calculation for rods of 100 nm at a dust optical depth of 0.4.
+func uncounted(d *Design) string {
+	var what []string
+	if d.Fate.Dust {
+		what = append(what, "with natural dust (shortens the life of thin rods about 1.5 times)")
+	}
+	if len(d.Particles) > 1 {
+		what = append(what, "between the populations of the mix (about 1.8 times for two)")
+	}
+	if what == nil {
+		return "meetings by differential fall and turbulence are not counted yet: sticky particles are lost sooner than computed"
+	}
+	return "meetings " + strings.Join(what, " and ") + " are not counted yet: sticky particles are lost sooner than computed"
+}
+
+// layerShare is the share of the airborne mass inside a fixed layer, 0 without one.
+func (s *fateFacts) layerShare() float64 {
+	if s.inPlace == 1 {
+		return 0
+	}
+	return s.inPlace
 }
 
 // thermalPeak is Wien's displacement constant [m K] (CODATA 2018).
@@ -61,8 +107,11 @@ func (r *DesignResult) tellWarnings(f *facts) {
 	for _, n := range f.state.Notes {
 		r.warn("warming", "%s", n)
 	}
-	if d.Fate.Profile.Kind != "computed" {
-		r.warn("fate.profile", "the height profile is fixed by the study, not computed: nothing here shows that the particles would stay there")
+	switch {
+	case d.Fate.Profile.Kind == "mixed":
+		r.warn("fate.profile", "the height profile is fixed by the study as mixed: the warming uses that, the lifetime the column that particles fall through")
+	case d.Fate.Profile.Kind == "layer" && r.LayerShare > 0:
+		r.warn("fate.profile", "the layer is fixed by the study: %.2g %% of what the column holds up is inside it; only that warms and counts as airborne, and the supply pays for the rest", 100*r.LayerShare)
 	}
 	if d.Fate.Vapour == "saturated" {
 		for _, p := range f.populations {
@@ -114,6 +163,11 @@ const (
 
 // tellFall fills fall speed against height, mass-weighted over the design.
 func (r *DesignResult) tellFall(p *planet, f *facts) error {
+	for _, pop := range f.populations {
+		if pop.noFall != nil {
+			return nil
+		}
+	}
 	for i := range fallSteps {
 		z := fallTop * float64(i) / (fallSteps - 1)
 		var v float64

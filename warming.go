@@ -60,8 +60,13 @@ func (r *DesignResult) warm(p *planet, f *facts) error {
 	r.Curve, r.CurveLow = curvePoints(curve, factor), curvePoints(f.low, factor)
 	r.MaxWarming, r.MaxBurden = factor*curve.Max.Warming, curve.Max.Burden
 	if !curve.Reached {
-		f.stop(fmt.Sprintf("unreachable: at most %s at %s (%s)",
-			FormatSI(r.MaxWarming, "K", 3), FormatSI(r.MaxBurden, "mg/m2", 3), curve.Cause))
+		r.NeverWarms = curve.Cause == greenhouse.CauseNever
+		cause := fmt.Sprintf("unreachable: at most %s at %s (%s)",
+			FormatSI(r.MaxWarming, "K", 3), FormatSI(r.MaxBurden, "mg/m2", 3), curve.Cause)
+		if r.NeverWarms {
+			cause = "unreachable: no burden warms"
+		}
+		f.stop(cause)
 		return nil
 	}
 	f.state.Warming *= factor
@@ -104,6 +109,10 @@ func (f *facts) fixedBurden(g Goal) (bool, error) {
 	return true, nil
 }
 
+// thermalFrom is where the thermal part of the spectrum begins [m]: what scales the thermal
+// optics scales an optical depth stated beyond it.
+const thermalFrom = 4e-6
+
 // extinctionAt returns the extinction per kilogram in which an optical-depth goal is
 // stated [m2/kg].
 func (f *facts) extinctionAt(g Goal) (float64, error) {
@@ -120,6 +129,9 @@ func (f *facts) extinctionAt(g Goal) (float64, error) {
 			return 0, err
 		}
 		sum += p.Share * x.Ext
+	}
+	if g.Wavelength >= thermalFrom {
+		sum *= f.thermalFactor
 	}
 	return sum, nil
 }

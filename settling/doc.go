@@ -25,7 +25,7 @@ package settling
 // treat, with the way each pushes the result, for a report to print.
 func LeftOut() []string {
 	return []string{
-		"Agglomeration acts as one rate over the whole column (the number-weighted mean), not faster where particles are dense; low-released sticky particles are lost sooner than computed.",
+		"Agglomeration acts as one rate over the whole column (the number-weighted mean), not faster where particles are dense; where mixing is slow, low-released sticky particles last up to about 1.4 times as long as computed.",
 		"Collisions with natural dust are not counted; sticky particles are lost sooner than computed.",
 		"Collisions between different populations of a design are not counted; sticky mixes are lost sooner than computed.",
 		"Differential settling and turbulence as causes of collisions are not counted; sticky particles of spread sizes are lost sooner than computed.",

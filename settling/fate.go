@@ -16,6 +16,9 @@ type Member struct {
 // quadrature over the number distribution aloft at steady state.
 type Population struct {
 	Nodes []Member
+	// Typical is the member with whose kernel all meet; the number-median one of Nodes
+	// if its shape is empty.
+	Typical Body
 }
 
 // Sink is a loss aloft at the same rate at every height, for instance burial by
@@ -50,6 +53,11 @@ func (p Population) check() error {
 		return errors.New("population: no members given")
 	}
 	var errs []error
+	if p.Typical.Shape != "" {
+		if err := p.Typical.Check(); err != nil {
+			errs = append(errs, fmt.Errorf("population's typical member: %w", err))
+		}
+	}
 	total := 0.0
 	for i, m := range p.Nodes {
 		if err := m.Body.Check(); err != nil {

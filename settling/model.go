@@ -68,7 +68,9 @@ func NewModel(c atmosphere.Column, pop Population, f Fate) (*Model, error) {
 	if err := m.addLanes(pop); err != nil {
 		return nil, err
 	}
-	m.median = m.medianBody()
+	if m.median = pop.Typical; m.median.Shape == "" {
+		m.median = m.medianBody()
+	}
 	m.kernel = make([]float64, n)
 	if effect := f.Sticking * f.KernelFactor * (1 - f.AggregateValue); effect > 0 {
 		for i, s := range l.mid {

@@ -24,7 +24,7 @@ func usual(sticking float64) Fate {
 	}
 }
 
-func one(b Body) Population { return Population{[]Member{{b, 1}}} }
+func one(b Body) Population { return Population{Nodes: []Member{{b, 1}}} }
 
 func thinRod() Body { return RodOf(8e-6, 80e-9, iron) }
 
@@ -278,7 +278,7 @@ func TestMedianBody(t *testing.T) {
 		{[]Member{{a, 1}, {b, 1.1}}, b},
 		{[]Member{{a, 0}, {c, 1}}, c},
 	} {
-		if m := must(NewModel(thin(), Population{r.pop}, usual(1))); m.median != r.want {
+		if m := must(NewModel(thin(), Population{Nodes: r.pop}, usual(1))); m.median != r.want {
 			t.Errorf("%v: median %v", r.pop, m.median)
 		}
 	}
@@ -340,7 +340,7 @@ func TestSuspend_Properties(t *testing.T) {
 		f.ReleaseHeight = rapid.Float64Range(0, 40e3).Draw(rt, "release")
 		f.LiftHeight = rapid.Float64Range(0, 40e3).Draw(rt, "lift height")
 		f.ReturnSingle = rapid.Float64Range(0, 1).Draw(rt, "single")
-		pop := Population{[]Member{
+		pop := Population{Nodes: []Member{
 			{RodOf(8e-6, 80e-9, iron), rapid.Float64Range(0.01, 1).Draw(rt, "a")},
 			{SphereOf(draw("r", 1e-7, 1e-5), 2000), rapid.Float64Range(0, 0.1).Draw(rt, "b")},
 		}}
@@ -400,7 +400,7 @@ func TestSuspend_Warnings(t *testing.T) {
 		{"shear", RodOf(50e-6, 1e-6, iron), func(f *Fate) {}, 85e-6, "not turned at random"},
 		{"alignment", thinRod(), func(f *Fate) {}, 85e-6, "stands them up"},
 		{"deposition", thinRod(), func(f *Fate) { f.Deposition = 1e-3 }, 85e-6, "deposition"},
-		{"slow mixing", thinRod(), func(f *Fate) { f.Sticking = 1; f.Eddy = ConstantEddy(10) }, 85e-6, "understates the loss"},
+		{"slow mixing", thinRod(), func(f *Fate) { f.Sticking = 1; f.Eddy = ConstantEddy(10) }, 85e-6, "understates how long"},
 		{"grid", thinRod(), func(f *Fate) { f.Sticking = 1; f.Eddy = ConstantEddy(1) }, 1e-3, "depends on the grid"},
 		{"inertia", SphereOf(1e-3, 1000), func(f *Fate) {}, 85e-6, "Schiller-Naumann"},
 		{"fast", SphereOf(1e-3, 1000), func(f *Fate) { f.ReleaseHeight = 80e3 }, 85e-6, "molecules' speed"},
@@ -438,7 +438,7 @@ func TestSuspend_Mistakes(t *testing.T) {
 			t.Errorf("burden %g: no error", burden)
 		}
 	}
-	for _, p := range []Population{{}, {[]Member{{thinRod(), 0}}}, {[]Member{{thinRod(), -1}, {thinRod(), 2}}}, {[]Member{{Body{}, 1}}}} {
+	for _, p := range []Population{{}, {Nodes: []Member{{thinRod(), 0}}}, {Nodes: []Member{{thinRod(), -1}, {thinRod(), 2}}}, {Nodes: []Member{{Body{}, 1}}}} {
 		if _, err := Suspend(thin(), p, usual(0), 85e-6); err == nil {
 			t.Errorf("population %+v: no error", p)
 		}

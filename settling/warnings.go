@@ -55,7 +55,7 @@ func (m *Model) warnings(s *Suspension, w *work, k float64) []string {
 	}
 	h := m.column.ScaleHeight(0)
 	if mixing := h * h / m.fate.Eddy(h); k*mixing > 1 {
-		warn("particles meet in %.2g d, faster than the column mixes (%.2g d): one rate over the whole column understates the loss near the release", 1/k/86400, mixing/86400)
+		warn("particles meet in %.2g d, faster than the column mixes (%.2g d): one rate over the whole column understates how long they last, by up to about 1.4 times", 1/k/86400, mixing/86400)
 	}
 	if i := m.lattice.cellOf(m.fate.ReleaseHeight); k*m.lattice.thickness(i)*m.lattice.thickness(i) > m.lattice.eddy[i] {
 		warn("particles meet before they are mixed out of the %.0f m in which they are released; the result depends on the grid", m.lattice.thickness(i))

@@ -19,7 +19,7 @@
 // transport depth tau* = burden (Ext - GSca):
 //
 //	out_b = B_b(Ts) / (1/f'_b + 0.75 tau*_b),    f' = f Q0/Ft0,    X = sum B / sum out - 1
-//	N_rad = [ (Ft+Fs)/2 + X (Fm - Fm0 + Q0) ] / (1 + X) - sum out
+//	N_rad = [ (Ft+Fs)/2 + X Q0 Fm/Fm0 ] / (1 + X) - sum out
 //
 // (half of what is absorbed aloft leaves directly; the rest of the balance is Eddington's, in which the net solar flux at
 // each depth must go out as thermal flux). f' makes N_rad vanish at T0 without aerosol.

@@ -31,6 +31,7 @@ const (
 	coldestGround            = 90.0         // ground temperature with aerosol [K]
 	warmestGround            = 480.0
 	testedSolarDepth         = 1.5  // solar extinction depth up to which the estimate was held against the full column
+	deepestTested            = 13.0 // solar extinction depth of the deepest comparison
 	largestBurden            = 1000 // [kg/m2], six times the air itself (610 Pa / 3.71 m/s2): beyond any aerosol
 )
 
@@ -225,7 +226,11 @@ var beyondTested = [...]string{
 
 // remark sets Valid and Notes.
 func (q *Quick) remark(s *State, a Aerosol) {
-	if s.OpticalDepthSolar > testedSolarDepth {
+	switch {
+	case s.OpticalDepthSolar > deepestTested:
+		s.Valid = false
+		s.Notes = append(s.Notes, fmt.Sprintf("solar optical depth %.3g is beyond %g: nothing like it was compared with a full column", s.OpticalDepthSolar, deepestTested))
+	case s.OpticalDepthSolar > testedSolarDepth:
 		s.Valid = false
 		s.Notes = append(s.Notes, fmt.Sprintf("solar optical depth %.2g is beyond %g: %s", s.OpticalDepthSolar, testedSolarDepth, beyondTested[a.Placement.Kind]))
 	}
@@ -295,7 +300,7 @@ func (c *column) radiativeGain(t float64) float64 {
 		out += v / r
 	}
 	x := planck/out - 1
-	mean := c.sun.mean - c.q.sunBase.mean + c.q.absorbedBase
+	mean := c.sun.mean / c.q.sunBase.mean * c.q.absorbedBase
 	return ((c.sun.top+c.sun.ground)/2+x*mean)/(1+x) - out
 }
 

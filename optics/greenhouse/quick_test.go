@@ -303,7 +303,7 @@ func TestWarming_BalanceCloses(t *testing.T) {
 				out += planck[b] / (1/(q.table.emission[b]*q0/f0.top) + 0.75*tau)
 			}
 			x := sum(planck)/out - 1
-			radiative := ((f.top+f.ground)/2+x*(f.mean-f0.mean+q0))/(1+x) - out
+			radiative := ((f.top+f.ground)/2+x*q0*f.mean/f0.mean)/(1+x) - out
 			if s.Rule == Radiative && math.Abs(radiative) > 1e-4 || radiative < -1e-4 {
 				t.Errorf("%s %v %v: radiative gain %.3g W/m2 at the answer", name, place, s.Rule, radiative)
 			}

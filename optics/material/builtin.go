@@ -25,27 +25,29 @@ type substance struct {
 	surfaceRhoL  float64 // [ohm m2]
 	defaultOxide float64 // [m]
 	volatile     bool
+	combustible  Answer
 	note         string
 }
 
 // substances lists the built-in materials. Densities and resistivities near 293 K
 // ([CRC97], values from memory; graphite and magnetite vary with make by a factor of a few).
 // surfaceRhoL: [Gall2016] for aluminium, copper, nickel, tungsten (values from memory);
-// iron 4e-16 within 50 %. Oxide skins: assumption, a few nm for every metal.
+// iron 4e-16 within 50 %. Oxide skins: assumption, a few nm for every metal. Combustible:
+// every metal and carbon as fine dust, to be on the safe side; an oxide and ice are not.
 func substances() []substance {
 	return []substance{
-		{name: "iron", curve: &ironCurve, density: 7874, metal: true, dc: 9.61e-8, surfaceRhoL: 4e-16, defaultOxide: 3e-9,
+		{name: "iron", combustible: Yes, curve: &ironCurve, density: 7874, metal: true, dc: 9.61e-8, surfaceRhoL: 4e-16, defaultOxide: 3e-9,
 			note: "two sources joined between 0.62 um and 0.667 um"},
-		{name: "iron-querry", curve: &ironQuerryCurve, density: 7874, metal: true, dc: 9.61e-8, surfaceRhoL: 4e-16, defaultOxide: 3e-9,
+		{name: "iron-querry", combustible: Yes, curve: &ironQuerryCurve, density: 7874, metal: true, dc: 9.61e-8, surfaceRhoL: 4e-16, defaultOxide: 3e-9,
 			note: "a second measurement, to show the spread between sources"},
-		{name: "aluminium", curve: &aluminiumCurve, density: 2700, metal: true, dc: 2.65e-8, surfaceRhoL: 5e-16, defaultOxide: 3e-9},
-		{name: "copper", curve: &copperCurve, density: 8960, metal: true, dc: 1.68e-8, surfaceRhoL: 6.7e-16, defaultOxide: 3e-9},
-		{name: "nickel", curve: &nickelCurve, density: 8908, metal: true, dc: 6.93e-8, surfaceRhoL: 4.1e-16, defaultOxide: 3e-9},
-		{name: "titanium", curve: &titaniumCurve, density: 4506, metal: true, dc: 4.2e-7, defaultOxide: 3e-9},
-		{name: "tungsten", curve: &tungstenCurve, density: 19250, metal: true, dc: 5.28e-8, surfaceRhoL: 8.2e-16, defaultOxide: 3e-9},
-		{name: "graphite", curve: &graphiteCurve, density: 2260, dc: 1e-5, note: roughBeyond},
-		{name: "magnetite", curve: &magnetiteCurve, density: 5170, dc: 5e-5, note: roughBeyond},
-		{name: "water-ice", curve: &waterIceCurve, density: 917, volatile: true,
+		{name: "aluminium", combustible: Yes, curve: &aluminiumCurve, density: 2700, metal: true, dc: 2.65e-8, surfaceRhoL: 5e-16, defaultOxide: 3e-9},
+		{name: "copper", combustible: Yes, curve: &copperCurve, density: 8960, metal: true, dc: 1.68e-8, surfaceRhoL: 6.7e-16, defaultOxide: 3e-9},
+		{name: "nickel", combustible: Yes, curve: &nickelCurve, density: 8908, metal: true, dc: 6.93e-8, surfaceRhoL: 4.1e-16, defaultOxide: 3e-9},
+		{name: "titanium", combustible: Yes, curve: &titaniumCurve, density: 4506, metal: true, dc: 4.2e-7, defaultOxide: 3e-9},
+		{name: "tungsten", combustible: Yes, curve: &tungstenCurve, density: 19250, metal: true, dc: 5.28e-8, surfaceRhoL: 8.2e-16, defaultOxide: 3e-9},
+		{name: "graphite", combustible: Yes, curve: &graphiteCurve, density: 2260, dc: 1e-5, note: roughBeyond},
+		{name: "magnetite", combustible: No, curve: &magnetiteCurve, density: 5170, dc: 5e-5, note: roughBeyond},
+		{name: "water-ice", combustible: No, curve: &waterIceCurve, density: 917, volatile: true,
 			note: "k is 2e-11 below 0.39 um, as the source has it"},
 	}
 }
@@ -79,6 +81,7 @@ func (s substance) build() *Material {
 		Source: c.source,
 		FitRMS: math.Max(c.nRMS, c.kRMS), FitWorst: math.Max(c.nWorst, c.kWorst),
 		Metal: s.metal, SurfaceRhoL: s.surfaceRhoL, DefaultOxide: s.defaultOxide, Volatile: s.volatile,
+		Conducts: No, Combustible: s.combustible,
 		StaticPermittivity: math.Inf(1),
 	}
 	m.n = newLogSpline(c.nKnots, c.lnN)
@@ -91,6 +94,7 @@ func (s substance) build() *Material {
 	last := complex(m.n.Predict(x), m.k.Predict(x))
 	var beyond string
 	if s.dc > 0 {
+		m.Conducts = Yes
 		m.tail = newDrudeTail(m.DataMax, last, s.dc)
 		beyond = fmt.Sprintf("Drude law to the direct-current resistivity %.3g ohm m", s.dc)
 	} else {

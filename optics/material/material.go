@@ -38,6 +38,8 @@ type Material struct {
 	SurfaceRhoL  float64 // resistivity x electron mean free path [ohm m2], 0 = none or unknown
 	DefaultOxide float64 // thickness of the oxide skin when a study gives none [m], an assumption
 	Volatile     bool    // sublimes under Mars-like conditions
+	Conducts     Answer  // whether a fibre of it conducts electricity
+	Combustible  Answer  // whether fine dust of it burns in breathable air [NFPA484]
 
 	// StaticPermittivity is the relative permittivity that the index tends to at long
 	// wavelengths [1], +Inf for a conductor.
@@ -46,6 +48,16 @@ type Material struct {
 	n, k predictor
 	tail tail // nil: end values are held beyond DataMax, if MaxWavelength allows
 }
+
+// Answer is yes, no or, for the materials of users' tables, unknown.
+type Answer string
+
+// The answers.
+const (
+	Yes     Answer = "yes"
+	No      Answer = "no"
+	Unknown Answer = "unknown"
+)
 
 // predictor gives a value at ln(wavelength/m).
 type predictor interface{ Predict(x float64) float64 }

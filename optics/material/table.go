@@ -138,6 +138,8 @@ func NewTable(name string, density float64, rows []Row, extend bool) (*Material,
 		MinWavelength: first.Wavelength, MaxWavelength: last.Wavelength,
 		DataMin: first.Wavelength, DataMax: last.Wavelength,
 		FitNote:            "linear in ln(wavelength) between rows",
+		Conducts:           Unknown,
+		Combustible:        Unknown,
 		StaticPermittivity: math.Max(1, last.N*last.N-last.K*last.K),
 		n:                  &nn, k: &kk,
 	}
