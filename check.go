@@ -5,12 +5,15 @@ import (
 	"math"
 	"slices"
 	"strings"
-	"unicode"
+	"unicode/utf8"
 )
 
 // check holds a node and all below it against the schema, reads every single value,
 // and lists the mistakes. Rules that join several inputs are in decode.
 func (l *loader) check(n *node, s *schema, path string) {
+	if n.faulty {
+		return
+	}
 	switch n.kind {
 	case scalarNode:
 		l.checkScalar(n, s, path)
@@ -37,6 +40,12 @@ func (l *loader) checkScalar(n *node, s *schema, path string) {
 	}
 	var p *problem
 	if n.quantity, n.flag, p = s.row.read(n.text); p != nil {
+		if n.section != "" {
+			path = n.section
+			if Nearest(n.text, s.row.Choices) == "" {
+				p.hint = "choose one of them, or give a map with base and what differs from it"
+			}
+		}
 		l.fault(n, path, quoteLong(n.text), *p)
 		return
 	}
@@ -45,7 +54,7 @@ func (l *loader) checkScalar(n *node, s *schema, path string) {
 
 func (l *loader) checkList(n *node, s *schema, path string) {
 	if s.item == nil {
-		l.fault(n, path, "", problem{what: "is a list", hint: typeHint(s)})
+		l.fault(n, path, "", problem{what: "is a list", hint: typeHint(s, false)})
 		return
 	}
 	if s.row != nil && s.row.Required && len(n.items) == 0 {
@@ -67,40 +76,72 @@ func (l *loader) checkList(n *node, s *schema, path string) {
 
 func (l *loader) checkMap(n *node, s *schema, path string) {
 	if len(s.children) == 0 {
-		l.fault(n, path, "", problem{what: "is a map", hint: typeHint(s)})
+		l.fault(n, path, "", problem{what: "is a map", hint: typeHint(s, false)})
 		return
 	}
+	l.decimalCommas(n, path)
 	for _, m := range n.members {
 		if c := s.child(m.key); c != nil {
 			l.check(m.value, c, joinPath(path, m.key))
-		} else {
-			l.faultAt(m.at, n.alias, joinPath(path, quoteLong(m.key)), "", unknownKey(s, m.key))
+			continue
 		}
+		if near := Nearest(m.key, s.keys()); near != "" && n.child(near) == nil {
+			n.misspelt = append(n.misspelt, near)
+		}
+		l.faultAt(m.at, n.alias, joinPath(path, quoteLong(m.key)), "", unknownKey(s, m.key))
 	}
 	for _, c := range s.children {
-		if c.row != nil && c.row.Required && n.child(c.name) == nil {
+		if c.row != nil && c.row.Required && n.lacks(c.name) {
 			l.fault(n, joinPath(path, c.name), "", problem{what: "is missing", hint: emptyHint(c)})
 		}
 	}
 }
 
+// decimalCommas finds numbers that a comma cuts in two: YAML reads {length: 8,5 um} as a
+// length of 8 and a key "5 um" without a value. It takes the false key out of the map.
+func (l *loader) decimalCommas(n *node, path string) {
+	var kept []member
+	for _, m := range n.members {
+		if len(kept) > 0 && m.value.null && isDigit(m.key[0]) {
+			last := kept[len(kept)-1]
+			v := last.value
+			if v.kind == scalarNode && v.text != "" && isDigit(v.text[len(v.text)-1]) {
+				p := problem{what: "has a comma inside the number", hint: fmt.Sprintf("write decimals with a point: %s.%s", v.text, m.key)}
+				if digits, _ := cutNumber(m.key); len(digits) == 3 {
+					p.hint += fmt.Sprintf("; thousands without a sign: %s%s", v.text, m.key)
+				}
+				l.fault(v, joinPath(path, quoteLong(last.key)), quoteLong(v.text+","+m.key), p)
+				v.faulty = true
+				continue
+			}
+		}
+		kept = append(kept, m)
+	}
+	n.members = kept
+}
+
 // wrongType says what may stand where a scalar does not fit.
 func wrongType(text string, s *schema) problem {
 	if s.row == nil || len(s.row.Choices) == 0 {
-		return problem{what: "is a single value", hint: typeHint(s)}
+		return problem{what: "is a single value", hint: typeHint(s, false)}
 	}
 	p := badChoice(text, s.row.Choices)
 	if Nearest(text, s.row.Choices) == "" {
-		p.hint = typeHint(s)
+		p.hint = typeHint(s, true)
 	}
 	return p
 }
 
-// typeHint says what belongs in a place.
-func typeHint(s *schema) string {
+// typeHint says what belongs in a place; told says that the message lists the words that
+// may stand there already.
+func typeHint(s *schema, told bool) string {
 	var kinds []string
 	if s.row != nil && len(s.row.Choices) > 0 {
-		kinds = append(kinds, "one of these words")
+		words := fewWords(s.row.Choices, "or")
+		if told {
+			words = "one of these words"
+		}
+		kinds = append(kinds, words)
 	} else if s.scalar() {
 		kinds = append(kinds, "a single value")
 		if example := s.row.example(); example != "" {
@@ -124,7 +165,7 @@ func typeHint(s *schema) string {
 func emptyHint(s *schema) string {
 	switch {
 	case s.row == nil:
-		return typeHint(s)
+		return typeHint(s, false)
 	case s.row.Kind == KindText && s.name == s.row.Path:
 		return "give the " + s.row.Title
 	case s.row.Kind == KindText, s.row.Kind == KindName, s.row.Kind == KindPath:
@@ -134,7 +175,7 @@ func emptyHint(s *schema) string {
 	case len(s.row.Choices) > 0 && s.scalar():
 		return "give " + fewWords(s.row.Choices, "or")
 	}
-	return typeHint(s)
+	return typeHint(s, false)
 }
 
 func shortDefault(row *Input) string {
@@ -236,14 +277,17 @@ func readFlag(text string) (bool, *problem) {
 
 func readText(text string) *problem {
 	const longest = 500
-	if len(text) > longest {
-		return &problem{what: fmt.Sprintf("is longer than %d bytes", longest), hint: "shorten it"}
+	if utf8.RuneCountInString(text) > longest {
+		return &problem{what: fmt.Sprintf("is longer than %d characters", longest), hint: "shorten it"}
 	}
-	if strings.ContainsFunc(text, unicode.IsControl) {
-		return &problem{what: "holds a control character or a line break", hint: "write it in one line"}
+	if strings.ContainsFunc(text, unseen) {
+		return &problem{what: unseenFault, hint: "write it in one line of plain text"}
 	}
 	return nil
 }
+
+// unseenFault is what is wrong with a text that has an [unseen] character.
+const unseenFault = "holds a control character, a line break or a sign that turns the direction of writing"
 
 // readNumber reads a number or quantity and holds it against dimension and range.
 func (in *Input) readNumber(text string) (Quantity, *problem) {

@@ -7,6 +7,9 @@ import (
 	"strconv"
 
 	"hazewright/logistics"
+	"hazewright/optics"
+	"hazewright/optics/material"
+	"hazewright/settling"
 )
 
 // decode fills the study from the checked tree and holds the rules that join several
@@ -21,6 +24,7 @@ func (l *loader) decode(root *node) {
 		path := fmt.Sprintf("designs[%s]", itemLabel(root.child("designs"), studySchema().child("designs"), i))
 		l.study.Designs = append(l.study.Designs, l.design(d, fate, supply, path))
 	}
+	l.checkWavelength(root.child("goal").child("at"))
 	l.study.Model = Model{
 		WarmingFactor:   root.child("model").si("warming_factor"),
 		KappaFactor:     root.child("model").si("kappa_factor"),
@@ -68,10 +72,6 @@ func (l *loader) world(n *node) World {
 		share.ok, item.child("species").ok = true, true
 	}
 	changed["gas"] = !slices.Equal(w.Gas, gasShares(base))
-	w.AtmosphereBaseline = true
-	for _, key := range []string{"surface_pressure", "gas", "gravity", "sunlight", "bond_albedo", "emissivity", "dust_optical_depth", "lapse_limit"} {
-		w.AtmosphereBaseline = w.AtmosphereBaseline && !changed[key]
-	}
 	if w.Name == "" {
 		w.Name = w.Base
 		for _, c := range changed {
@@ -129,13 +129,12 @@ func (l *loader) goal(n *node) Goal {
 	if n == nil || n.kind != mapNode {
 		return g
 	}
-	asked := false
+	asked := !n.lacks("warming") || !n.lacks("burden") || !n.lacks("optical_depth")
 	for _, m := range n.members {
 		if m.key != "warming" && m.key != "burden" && m.key != "optical_depth" {
 			asked = asked || outsideScope(m.key)
 			continue
 		}
-		asked = true
 		if g.Kind != "" {
 			l.faultAt(m.at, m.value.alias, "goal."+m.key, "", problem{what: fmt.Sprintf("is a second goal beside %s", g.Kind), hint: "give exactly one"})
 			continue
@@ -148,7 +147,7 @@ func (l *loader) goal(n *node) Goal {
 	g.Warming, g.Burden, g.OpticalDepth = n.si("warming"), n.si("burden"), n.si("optical_depth")
 	at := n.child("at")
 	switch {
-	case g.Kind == "optical_depth" && at == nil:
+	case g.Kind == "optical_depth" && n.lacks("at"):
 		l.fault(n, "goal.at", "", problem{what: "is missing", hint: "say where the optical depth holds: thermal, solar or a wavelength such as 10 um"})
 	case g.Kind != "optical_depth" && at != nil && g.Kind != "":
 		l.fault(at, "goal.at", "", problem{what: "belongs to a goal of optical_depth only", hint: "remove it"})
@@ -165,6 +164,25 @@ func (l *loader) goal(n *node) Goal {
 		}
 	}
 	return g
+}
+
+// checkWavelength refuses a goal at a wavelength where the index of a material is not known.
+func (l *loader) checkWavelength(at *node) {
+	if at == nil || l.study.Goal.Wavelength == 0 {
+		return
+	}
+	for _, d := range l.study.Designs {
+		for _, p := range d.Particles {
+			m, err := materialOf(p.Material)
+			if err != nil {
+				continue // the material has its own mistake
+			}
+			if _, err := m.Index(l.study.Goal.Wavelength); err != nil {
+				l.fault(at, "goal.at", quoteLong(at.text), problem{what: "cannot be used: " + err.Error(), hint: "choose a wavelength inside that range"})
+				return
+			}
+		}
+	}
 }
 
 // design reads one candidate; fate and supply are the study's.
@@ -216,18 +234,66 @@ func (l *loader) particle(n *node, path string) Particle {
 	}
 	if n.has("oxide") {
 		p.Oxide = n.si("oxide")
-		if thickness > 0 && p.Oxide >= thickness {
-			l.fault(n.child("oxide"), path+".oxide", n.word("oxide"), problem{what: "leaves no core: the particle's radius is " + FormatSI(thickness, "nm", 4),
-				hint: "choose a thinner oxide or a thicker particle"})
+	}
+	l.checkCore(n, p, 2*thickness, path)
+	l.checkSpread(n, p, path)
+	return p
+}
+
+// checkSpread refuses a spread whose outermost sizes the stages do not take. Particles that
+// they do not take anyhow are left to the mistakes of their own.
+func (l *loader) checkSpread(n *node, p Particle, path string) {
+	m, err := materialOf(p.Material)
+	if err != nil || !n.has("spread") {
+		return
+	}
+	sizes, err := optics.NewPopulation(opticsParticle(p, m))
+	if err != nil {
+		return
+	}
+	um := func(si float64) string { return FormatSI(si, "um", 3) }
+	for _, class := range sizes.Nodes() {
+		if class.Size < settling.MinSize || class.Size > settling.MaxSize {
+			l.fault(n.child("spread"), path+".spread", n.word("spread"), problem{what: fmt.Sprintf("reaches a size of %s, outside", um(class.Size)),
+				allowed: um(settling.MinSize) + " to " + um(settling.MaxSize), hint: "choose a smaller spread"})
+			return
 		}
 	}
-	return p
+}
+
+// checkCore refuses an oxide skin, given or the material's own, that leaves no more than
+// half of a particle's thickness [m], or a rod's core too thin for the optics.
+func (l *loader) checkCore(n *node, p Particle, thickness float64, path string) {
+	at, key, whose := n.child("oxide"), ".oxide", ""
+	if p.Oxide < 0 {
+		m, err := material.ByName(p.Material.Name)
+		if p.Material.Table != "" || err != nil {
+			return
+		}
+		p.Oxide, key, whose = m.DefaultOxide, ".diameter", " of "+m.Name+" by default"
+		if at = n.child("diameter"); p.Shape == "sphere" {
+			at, key = n.child("radius"), ".radius"
+		}
+	}
+	const slack = 1e-12
+	core, must := thickness-2*p.Oxide, ""
+	switch {
+	case p.Oxide > 0 && core <= thickness/2*(1+slack):
+		must = "more than " + FormatSI(thickness/2, "nm", 4)
+	case p.Shape == "rod" && core < optics.MinDiameter*(1-slack):
+		must = "at least " + FormatSI(optics.MinDiameter, "nm", 4)
+	}
+	if thickness > 0 && at != nil && must != "" {
+		l.fault(at, path+key, at.text, problem{what: fmt.Sprintf("leaves a core of %s of %s across: the oxide skin%s is %s thick",
+			FormatSI(max(core, 0), "nm", 4), FormatSI(thickness, "nm", 4), whose, FormatSI(p.Oxide, "nm", 4)),
+			hint: "choose a thinner oxide or a thicker particle: " + must + " must be left"})
+	}
 }
 
 // need holds the keys that a shape must and must not have.
 func (l *loader) need(n *node, path, hint string, must, mustNot []string) {
 	for _, key := range must {
-		if n.child(key) == nil {
+		if n.lacks(key) {
 			l.fault(n, path+"."+key, "", problem{what: "is missing", hint: hint})
 		}
 	}
@@ -269,6 +335,7 @@ func (l *loader) material(n *node, path string) MaterialRef {
 	ref := MaterialRef{Name: n.word("table"), Table: n.word("table"), Density: n.si("density"), Extend: n.on("extend")}
 	if n.has("table") {
 		ref.Rows = l.readTable(n.child("table"), path+".table")
+		l.checkCoverage(n, ref, path)
 	}
 	return ref
 }
@@ -287,6 +354,9 @@ func (l *loader) shares(n *node, d *Design, path string) {
 	for i, item := range n.items {
 		if item.kind == mapNode && item.child("share") == nil {
 			sound = false
+			if !item.lacks("share") {
+				continue
+			}
 			l.fault(item, fmt.Sprintf("%s[%d].share", path, i), "", problem{what: "is missing", hint: "several populations each need a share of the airborne mass; they sum to 100 %"})
 			continue
 		}

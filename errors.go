@@ -3,7 +3,9 @@ package hazewright
 import (
 	"fmt"
 	"slices"
+	"strconv"
 	"strings"
+	"unicode"
 )
 
 // Mistake is one thing in a study that must be mended before it can be assessed.
@@ -73,10 +75,34 @@ func quoteLong(s string) string {
 	if r := []rune(s); len(r) > longest {
 		s = string(r[:longest]) + "..."
 	}
-	if strings.ContainsAny(s, "\n\t\r") || s != strings.TrimSpace(s) || strings.ContainsFunc(s, func(r rune) bool { return r < ' ' || r == 0x7f }) {
+	if s != strings.TrimSpace(s) || strings.ContainsFunc(s, unseen) {
 		return fmt.Sprintf("%q", s)
 	}
 	return s
+}
+
+// unseen reports whether a character would upset the line it is printed in: control
+// characters, line breaks of every kind, and the signs that turn the direction of writing.
+func unseen(r rune) bool {
+	return unicode.IsControl(r) || unicode.In(r, unicode.Zl, unicode.Zp, unicode.Bidi_Control)
+}
+
+// visible returns a text of one line in which such characters are escaped: "\x1b", "\u202e".
+func visible(s string) string {
+	s = strings.ToValidUTF8(s, "?")
+	if !strings.ContainsFunc(s, unseen) {
+		return s
+	}
+	var b strings.Builder
+	for _, r := range s {
+		if unseen(r) {
+			quoted := strconv.QuoteRuneToASCII(r)
+			b.WriteString(quoted[1 : len(quoted)-1])
+		} else {
+			b.WriteRune(r)
+		}
+	}
+	return b.String()
 }
 
 // place is where a value stands: its layer, and the line and column or the number of

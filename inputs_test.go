@@ -74,6 +74,34 @@ func checkNumericRow(t *testing.T, in Input) {
 	}
 }
 
+// Whatever the study does not give says where it comes from: an assumption, or a reference
+// by its key. Only the planet and its synodic period have references.
+func TestInputTable_DefaultsAreAssumedOrCited(t *testing.T) {
+	for _, in := range InputTable() {
+		if in.Default == "" && in.Unset == "" {
+			continue
+		}
+		cited := strings.Contains(in.Source, "[")
+		if !cited && !strings.HasPrefix(in.Source, assumption) {
+			t.Errorf("%s: default %q has the source %q", in.Path, in.Default, in.Source)
+		}
+		if cited && !strings.HasPrefix(in.Path, "world.") && in.Path != "supply.delivery.window_spacing" {
+			t.Errorf("%s cites %q", in.Path, in.Source)
+		}
+	}
+}
+
+// Inputs that nothing reads yet, or that are read and checked only, say so.
+func TestInputTable_WhatHasNoEffectSaysSo(t *testing.T) {
+	for path, part := range map[string]string{"fate.dust": "no effect yet", "uncertain": "draws no samples", "sweeps": "does not run them"} {
+		for _, in := range InputTable() {
+			if strings.TrimSuffix(in.Path, "[]") == path && !strings.Contains(in.Title, part) {
+				t.Errorf("%s: %q does not say %q", in.Path, in.Title, part)
+			}
+		}
+	}
+}
+
 // The table cannot be changed by those who read it.
 func TestInputTable_IsACopy(t *testing.T) {
 	for _, in := range InputTable() {

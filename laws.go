@@ -26,7 +26,8 @@ func (l *loader) figure(n *node, path string) (FigureDef, bool) {
 	return f, ok
 }
 
-// figureValue reads a value in the dimension of a figure.
+// figureValue reads a value in the dimension of a figure, which is above zero but for the
+// figures of mayBeNegative.
 func (l *loader) figureValue(n *node, path string, f FigureDef) float64 {
 	if n == nil || n.kind != scalarNode || !n.ok {
 		return 0
@@ -36,6 +37,9 @@ func (l *loader) figureValue(n *node, path string, f FigureDef) float64 {
 		in.Kind, in.Example = KindNumber, "1"
 	}
 	q, p := in.readNumber(n.text)
+	if p == nil && q.SI <= 0 && !mayBeNegative[f.ID] {
+		p = &problem{what: "is not above zero", hint: "the distance of a design from it is told as a ratio; give a value above zero"}
+	}
 	if p != nil {
 		l.fault(n, path, quoteLong(n.text), *p)
 		return 0
@@ -44,6 +48,9 @@ func (l *loader) figureValue(n *node, path string, f FigureDef) float64 {
 	return q.SI
 }
 
+// mayBeNegative are the figures for which zero and less are values like others.
+var mayBeNegative = map[string]bool{"warming": true, "warming_low_held": true, "forcing": true}
+
 func (l *loader) limits(root *node) {
 	for i, n := range root.list("limits") {
 		path := fmt.Sprintf("limits[%d]", i)
@@ -51,6 +58,8 @@ func (l *loader) limits(root *node) {
 		most, least := n.child("at_most"), n.child("at_least")
 		switch {
 		case n.kind != mapNode:
+			continue
+		case most == nil && least == nil && (!n.lacks("at_most") || !n.lacks("at_least")):
 			continue
 		case most == nil && least == nil:
 			l.fault(n, path, "", problem{what: "has no bound", hint: "give at_most or at_least"})
@@ -204,6 +213,8 @@ func (l *loader) lawHasKeys(row *node, kind, path string) bool {
 	for _, key := range takes {
 		if row.child(key) == nil {
 			sound = false
+		}
+		if row.lacks(key) {
 			l.fault(row, path+"."+key, "", problem{what: "is missing", hint: hint})
 		}
 	}

@@ -120,6 +120,9 @@ func (l *loader) fault(n *node, field, value string, p problem) {
 func (l *loader) faultAt(at place, alias int, field, value string, p problem) {
 	m := Mistake{File: l.file.Name, Line: at.line, Column: at.column, Field: field, Value: value,
 		Problem: p.what, Allowed: p.allowed, Hint: p.hint, order: [3]int{int(at.layer), at.line, at.column}}
+	for _, text := range []*string{&m.Field, &m.Value, &m.Problem, &m.Allowed, &m.Hint} {
+		*text = visible(*text)
+	}
 	if at.layer == layerSet {
 		m.File, m.Line, m.Column = at.String(), 0, 0
 	}
@@ -164,7 +167,7 @@ func (l *loader) parseFile() *node {
 		l.faultAt(at, 0, "", "the file", problem{what: "holds a second document", hint: "a study is one document; remove what follows the line ---"})
 	}
 	inFile := func(line, column int) place { return place{layer: layerFile, line: line, column: column} }
-	root := l.read(&doc, inFile)
+	root := l.read(&doc, studySchema(), "", inFile)
 	if root == nil && len(l.mistakes) > 0 {
 		return nil
 	}
@@ -175,13 +178,13 @@ func (l *loader) parseFile() *node {
 	return root
 }
 
-// read turns a YAML document into nodes.
-func (l *loader) read(doc *yaml.Node, where func(line, column int) place) *node {
+// read turns a YAML document, the value at a path of the schema, into nodes.
+func (l *loader) read(doc *yaml.Node, s *schema, path string, where func(line, column int) place) *node {
 	if doc.Kind != yaml.DocumentNode || len(doc.Content) == 0 {
 		return nil
 	}
 	r := nodeReader{place: where, fault: func(at place, field, value string, p problem) { l.faultAt(at, 0, field, value, p) }}
-	return r.read(doc.Content[0], "", 0, 0)
+	return r.read(doc.Content[0], s, path, 0, 0)
 }
 
 // badByte returns line and column of the first byte that is not UTF-8.
@@ -247,7 +250,7 @@ func (l *loader) applySet(root *node, number int, set string) {
 		l.faultAt(at, 0, "", quoteLong(path), problem{what: "is not a path", hint: `write paths like "fate.burial_time" or "designs[Name].particles[0].diameter"`})
 		return
 	}
-	v := l.setValue(at, path, value)
+	v := l.setValue(at, segs, path, value)
 	if v == nil {
 		return
 	}
@@ -289,7 +292,7 @@ func (l *loader) applySet(root *node, number int, set string) {
 }
 
 // setValue reads the VALUE of a --set, which may be anything in YAML's flow style.
-func (l *loader) setValue(at place, path, value string) *node {
+func (l *loader) setValue(at place, segs []segment, path, value string) *node {
 	if strings.TrimSpace(value) == "" {
 		l.faultAt(at, 0, path, "", problem{what: "is empty", hint: "write a value after ="})
 		return nil
@@ -303,7 +306,15 @@ func (l *loader) setValue(at place, path, value string) *node {
 		l.syntaxFault(at, path, err)
 		return nil
 	}
-	v := l.read(&doc, func(int, int) place { return at })
+	s := studySchema()
+	for _, seg := range segs {
+		if seg.item {
+			s = s.items()
+		} else {
+			s = s.child(seg.text)
+		}
+	}
+	v := l.read(&doc, s, path, func(int, int) place { return at })
 	if v == nil && doc.Kind == 0 {
 		l.faultAt(at, 0, path, quoteLong(value), problem{what: "is empty", hint: "write a value after ="})
 	}
@@ -335,6 +346,7 @@ func expandWorld(root *node) {
 		return
 	}
 	base := *w
+	base.section = "world"
 	*w = node{kind: mapNode, at: base.at, alias: base.alias, members: []member{{"base", base.at, &base}}}
 }
 
@@ -381,7 +393,7 @@ func defaultNode(s *schema) *node {
 		return nil
 	}
 	r := nodeReader{place: func(int, int) place { return place{} }, fault: func(place, string, string, problem) {}}
-	return r.read(doc.Content[0], s.name, 0, 0)
+	return r.read(doc.Content[0], s, s.name, 0, 0)
 }
 
 // hasDefaults reports whether any input of a section has a default.

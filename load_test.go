@@ -4,9 +4,11 @@ import (
 	"encoding/json"
 	"errors"
 	"fmt"
+	"math"
 	"os"
 	"path/filepath"
 	"reflect"
+	"strconv"
 	"strings"
 	"testing"
 	"time"
@@ -86,14 +88,13 @@ func TestLoad_Mistakes(t *testing.T) {
 
 		// Keys and shapes of the tree.
 		{"unknown key", with("diameter:", "diametre:"), []string{
-			"s.yaml:6:9: designs[Iron rods].particles[0].diameter: is missing; a rod takes length and diameter",
 			`s.yaml:6:36: designs[Iron rods].particles[0].diametre: is an unknown key; did you mean "diameter"?`}},
-		{"key in capitals", with("study:", "Study:"), []string{`s.yaml:1:1: Study: is an unknown key; did you mean "study"?`, "s.yaml:1:1: study: is missing"}},
+		{"key in capitals", with("study:", "Study:"), []string{`s.yaml:1:1: Study: is an unknown key; did you mean "study"?`}},
 		{"look-alike beside the key", "STUDY: A\n" + smallStudy, []string{`s.yaml:1:1: STUDY: is an unknown key; did you mean "study"?`}},
 		{"key of another section", smallStudy + "fate: {specific_mass: 3 t}\n", []string{"s.yaml:7:8: fate.specific_mass: is an unknown key; it belongs under supply.plant or supply.power"}},
 		{"strange key", smallStudy + "goal_of_all: 3\n", []string{`s.yaml:7:1: goal_of_all: is an unknown key; did you mean "goal"?`}},
 		{"duplicate key", smallStudy + "study: Again\n", []string{"s.yaml:7:1: study: is given twice, first in line 1"}},
-		{"duplicate key inside", with("8 um", "8 um, length: 9 um"), []string{"s.yaml:6:36: designs[0].particles[0].length: is given twice, first in line 6"}},
+		{"duplicate key inside", with("8 um", "8 um, length: 9 um"), []string{"s.yaml:6:36: designs[Iron rods].particles[0].length: is given twice, first in line 6"}},
 		{"key that is no word", smallStudy + "? [a]\n: 3\n", []string{"s.yaml:7:3: has a key that is not a word"}},
 		{"empty value", with("Thaw", ""), []string{"s.yaml:1:7: study: is empty; give the title of the study"}},
 		{"null", with("Thaw", "~"), []string{"s.yaml:1:8: study: is empty"}},
@@ -103,6 +104,20 @@ func TestLoad_Mistakes(t *testing.T) {
 		{"missing goal", with("goal: {warming: 20 K}\n", ""), []string{"s.yaml:1:1: goal: is missing"}},
 		{"missing designs", "study: T\ngoal: {warming: 3 K}\n", []string{"s.yaml:1:1: designs: is missing"}},
 		{"no designs", "study: T\ngoal: {warming: 3 K}\ndesigns: []\n", []string{"s.yaml:3:10: designs: is an empty list"}},
+		{"misspelt section", with("goal:", "gaol:"), []string{`s.yaml:2:1: gaol: is an unknown key; did you mean "goal"?`}},
+		{"misspelt goal", with("warming", "warmign"), []string{`s.yaml:2:8: goal.warmign: is an unknown key; did you mean "warming"?`}},
+		{"misspelt bound", smallStudy + "limits: [{figure: warming, atmost: 3 K}]\n", []string{`s.yaml:7:28: limits[0].atmost: is an unknown key; did you mean "at_most"?`}},
+		{"misspelt deviation", smallStudy + "uncertain: [{at: fate.sticking, law: normal, mean: 0.5, std: 0.1}]\n", []string{`s.yaml:7:57: uncertain[0].std: is an unknown key; did you mean "sd"?`}},
+		{"misspelt share", with("iron}", "iron, shares: 40 %}\n      - {shape: sphere, radius: 1 um, material: iron, share: 60 %}"), []string{
+			`s.yaml:6:69: designs[Iron rods].particles[0].shares: is an unknown key; did you mean "share"?`}},
+		{"misspelt key beside another that is missing", with("length: 8 um, diameter: 80 nm", "diametre: 80 nm"), []string{
+			"s.yaml:6:9: designs[Iron rods].particles[0].length: is missing", "s.yaml:6:22: designs[Iron rods].particles[0].diametre: is an unknown key"}},
+		{"duplicate key of a sink", smallStudy + "fate: {sinks: [{name: caps, rate: 1 %/yr, rate: 2 %/yr}]}\n", []string{"s.yaml:7:43: fate.sinks[caps].rate: is given twice"}},
+		{"decimal comma", with("8 um", "8,5 um"), []string{"s.yaml:6:30: designs[Iron rods].particles[0].length: 8,5 um has a comma inside the number; write decimals with a point: 8.5 um"}},
+		{"thousands with a comma", with("8 um", "8,000 nm"), []string{"s.yaml:6:30: designs[Iron rods].particles[0].length: 8,000 nm has a comma inside the number; ...8.000 nm; thousands without a sign: 8000 nm"}},
+		{"decimal comma of a plain number", smallStudy + "fate: {sticking: 0,5, charge: 1}\n", []string{"s.yaml:7:18: fate.sticking: 0,5 has a comma inside the number; write decimals with a point: 0.5"}},
+		{"missing material", with(", material: iron", ""), []string{"s.yaml:6:9: designs[Iron rods].particles[0].material: is missing; give iron, ...water-ice, or a map with the keys table, density and extend"}},
+		{"empty material", with("iron", ""), []string{"s.yaml:6:63: designs[Iron rods].particles[0].material: is empty; give iron, ...water-ice"}},
 		{"list for a value", with("8 um", "[8 um]"), []string{"s.yaml:6:30: designs[Iron rods].particles[0].length: is a list; give a single value such as 8 um"}},
 		{"map for a value", with("8 um", "{of: 8 um}"), []string{"s.yaml:6:30: designs[Iron rods].particles[0].length: is a map; give a single value"}},
 		{"value for a section", smallStudy + "supply: 7\n", []string{"s.yaml:7:9: supply: 7 is a single value; give a map with the keys route"}},
@@ -111,7 +126,7 @@ func TestLoad_Mistakes(t *testing.T) {
 		{"unknown word", with("shape: rod", "shape: disc"), []string{"s.yaml:6:17: designs[Iron rods].particles[0].shape: disc is not one of rod, sphere"}},
 		{"near word", smallStudy + "supply: {feedstock: {mineral: hematit}}\n", []string{"s.yaml:7:31: supply.feedstock.mineral: hematit is not one of ...did you mean hematite?"}},
 		{"neither on nor off", smallStudy + "fate: {dust: maybe}\n", []string{"s.yaml:7:14: fate.dust: maybe is neither on nor off"}},
-		{"title of two lines", with("Thaw", "\"a\\nb\""), []string{`s.yaml:1:8: study: "a\nb" holds a control character or a line break`}},
+		{"title of two lines", with("Thaw", "\"a\\nb\""), []string{`s.yaml:1:8: study: "a\nb" holds a control character, a line break`}},
 
 		// YAML itself.
 		{"nothing", "", []string{"s.yaml:1:1: the file is empty"}},
@@ -130,7 +145,7 @@ func TestLoad_Mistakes(t *testing.T) {
 		{"alias of itself", smallStudy + "fate: &f [*f]\n", []string{"s.yaml:7:7: fate[0]...is nested deeper than 24 levels", "s.yaml:7:7: fate: is a list"}},
 
 		// World and goal.
-		{"unknown world", smallStudy + "world: vulcan\n", []string{"s.yaml:7:8: world.base: vulcan is not one of mars"}},
+		{"unknown world", smallStudy + "world: vulcan\n", []string{"s.yaml:7:8: world: vulcan is not one of mars; ...a map with base"}},
 		{"gas that does not sum", smallStudy + "world: {gas: [{species: CO2, share: 90 %}]}\n", []string{"s.yaml:7:14: world.gas: has shares that sum to 90 % instead of 100 %"}},
 		{"gas twice", smallStudy + "world: {gas: [{species: CO2, share: 90 %}, {species: CO2, share: 10 %}]}\n", []string{"s.yaml:7:54: world.gas[1].species: CO2 is given twice"}},
 		{"unknown gas", smallStudy + "world: {gas: [{species: Xe, share: 100 %}]}\n", []string{"s.yaml:7:25: world.gas[0].species: Xe is not one of CO2, N2, Ar, air"}},
@@ -147,6 +162,20 @@ func TestLoad_Mistakes(t *testing.T) {
 		{"two of a name", smallStudy + "  - name: Iron rods\n    particles: [{shape: sphere, radius: 1 um, material: iron}]\n", []string{"s.yaml:7:11: designs: Iron rods names two of the list, first in line 4"}},
 		{"name that is a number", with("name: Iron rods", "name: 7"), []string{"s.yaml:4:11: designs[0].name: 7 is a number"}},
 		{"name with a bracket", with("name: Iron rods", `name: "a]b"`), []string{"s.yaml:4:11: designs[0].name: a]b holds a bracket"}},
+		{"name that is long", with("Iron rods", strings.Repeat("\u00fc", 81)), []string{"s.yaml:4:11: designs[0].name: ...is longer than 80 characters"}},
+		{"name with an escape", with("Iron rods", `"Iron\e[31m rods"`), []string{`s.yaml:4:11: designs[0].name: "Iron\x1b[31m rods" holds a control character`}},
+		{"name of two lines", with("Iron rods", `"Iron\nrods"`), []string{`s.yaml:4:11: designs[0].name: "Iron\nrods" holds a control character`}},
+		{"name that turns the writing", with("Iron rods", `"Iron \u202esdor"`), []string{`s.yaml:4:11: designs[0].name: "Iron \u202esdor" holds a control character`}},
+		{"key with an escape", smallStudy + `"\e[31mfate": {}` + "\n", []string{`s.yaml:7:1: "\x1b[31mfate": is an unknown key`}},
+		{"word with an escape", with("iron}", `"\e[31mtin"}`), []string{`s.yaml:6:63: designs[Iron rods].particles[0].material: "\x1b[31mtin" is not one of`}},
+		{"thin rod of metal", with("80 nm", "11 nm"), []string{"s.yaml:6:46: designs[Iron rods].particles[0].diameter: 11 nm leaves a core of 5 nm of 11 nm across: the oxide skin of iron by default is 3 nm thick; ...more than 5.5 nm"}},
+		{"thick oxide", with("iron}", "iron, oxide: 21 nm}"), []string{"s.yaml:6:76: designs[Iron rods].particles[0].oxide: 21 nm leaves a core of 38 nm of 80 nm across: the oxide skin is 21 nm thick; ...more than 40 nm"}},
+		{"thin core", with("80 nm, material: iron", "3 nm, material: iron, oxide: 0.6 nm"), []string{"s.yaml:6:75: designs[Iron rods].particles[0].oxide: 0.6 nm leaves a core of 1.8 nm of 3 nm across: ...at least 2 nm"}},
+		{"oxide of a sphere", with("shape: rod, length: 8 um, diameter: 80 nm, material: iron", "shape: sphere, radius: 5 nm, material: iron"), []string{
+			"s.yaml:6:33: designs[Iron rods].particles[0].radius: 5 nm leaves a core of 4 nm of 10 nm across: the oxide skin of iron by default is 3 nm thick"}},
+		{"spread beyond the sizes", with("shape: rod, length: 8 um, diameter: 80 nm, material: iron", "shape: sphere, radius: 50 um, material: iron, spread: 2.5"), []string{
+			"s.yaml:6:64: designs[Iron rods].particles[0].spread: 2.5 reaches a size of ..., outside 0.001 um to 10000 um; choose a smaller spread"}},
+		{"goal where the index is not known", with("{warming: 20 K}", "{optical_depth: 0.5, at: 0.1 um}"), []string{"s.yaml:2:32: goal.at: 0.1 um cannot be used: material iron: refractive index needed at 0.1 um"}},
 		{"rod with a radius", with("iron}", "iron, radius: 3 um}"), []string{"s.yaml:6:69: designs[Iron rods].particles[0].radius: does not belong to this shape; a rod takes length and diameter"}},
 		{"sphere of a rod's sizes", with("shape: rod", "shape: sphere"), []string{
 			"s.yaml:6:9: designs[Iron rods].particles[0].radius: is missing; a sphere takes a radius",
@@ -154,7 +183,7 @@ func TestLoad_Mistakes(t *testing.T) {
 			"s.yaml:6:39: designs[Iron rods].particles[0].diameter: does not belong to this shape"}},
 		{"stout rod", with("8 um", "700 nm"), []string{"s.yaml:6:48: designs[Iron rods].particles[0].diameter: 80 nm makes the rod 8.75 times as long as thick; below 10"}},
 		{"rod across", with("diameter: 80 nm", "diameter: 9 um"), []string{"s.yaml:6:46: designs[Iron rods].particles[0].diameter: 9 um is not below the length, 8 um"}},
-		{"all oxide", with("iron}", "iron, oxide: 40 nm}"), []string{"s.yaml:6:76: designs[Iron rods].particles[0].oxide: 40 nm leaves no core"}},
+		{"all oxide", with("iron}", "iron, oxide: 40 nm}"), []string{"s.yaml:6:76: designs[Iron rods].particles[0].oxide: 40 nm leaves a core of 0 nm of 80 nm across: ...more than 40 nm"}},
 		{"unknown material", with("iron}", "irn}"), []string{"s.yaml:6:63: designs[Iron rods].particles[0].material: irn is not one of iron, ...did you mean iron?"}},
 		{"single share", with("iron}", "iron, share: 90 %}"), []string{"s.yaml:6:76: designs[Iron rods].particles: has shares that sum to 90 % instead of 100 %"}},
 		{"shares of two", with("iron}", "iron, share: 40 %}\n      - {shape: sphere, radius: 1 um, material: iron, share: 50 %}"), []string{"s.yaml:7:62: designs[Iron rods].particles: has shares that sum to 90 % instead of 100 %"}},
@@ -180,6 +209,8 @@ func TestLoad_Mistakes(t *testing.T) {
 		{"limit in degC", smallStudy + "limits: [{figure: warming, at_most: 3 degC}]\n", []string{"s.yaml:7:37: limits[0].at_most: 3 degC is a temperature where a difference is due"}},
 		{"limit of a share", smallStudy + "limits: [{figure: sunlight_loss, at_most: 3 t}]\n", []string{"s.yaml:7:43: limits[0].at_most: 3 t is a mass where a plain number is due"}},
 		{"no bound", smallStudy + "limits: [{figure: warming}]\n", []string{"s.yaml:7:10: limits[0]: has no bound"}},
+		{"bound of zero", smallStudy + "limits: [{figure: production_rate, at_most: 0 t/d}]\n", []string{"s.yaml:7:45: limits[0].at_most: 0 t/d is not above zero; ...ratio"}},
+		{"bound below zero", smallStudy + "limits: [{figure: sunlight_loss, at_least: -1 %}]\n", []string{"s.yaml:7:44: limits[0].at_least: -1 % is not above zero"}},
 		{"two bounds", smallStudy + "limits: [{figure: warming, at_most: 3 K, at_least: 4 K}]\n", []string{"s.yaml:7:52: limits[0].at_least: is a second bound"}},
 		{"benchmark of no design", smallStudy + "benchmarks: [{design: Iron rod, figure: burden, value: 3 mg/m2, source: q}]\n", []string{`s.yaml:7:23: benchmarks[0].design: Iron rod is not a design of this study; did you mean "Iron rods"?`}},
 		{"benchmark without source", smallStudy + "benchmarks: [{design: Iron rods, figure: burden, value: 3 mg/m2}]\n", []string{"s.yaml:7:14: benchmarks[0].source: is missing"}},
@@ -263,7 +294,7 @@ func TestLoad_SetMistakes(t *testing.T) {
 		{"designs[Tin].name=x", "--set #1: designs[Tin].name: there is no designs[Tin]; the study has Iron rods"},
 		{"designs[Iron rods].particles[4].spread=2", "--set #1: designs[Iron rods].particles[4].spread: there is no designs[Iron rods].particles[4]; items are numbered from 0 to 0"},
 		{"designs=1", "--set #1: designs: 1 is a single value; give a list"},
-		{"world=vulcan", "--set #1: world.base: vulcan is not one of mars"},
+		{"world=vulcan", "--set #1: world: vulcan is not one of mars"},
 		{"goal.burden=3 mg/m2", "--set #1: goal.burden: is a second goal beside warming"},
 		{"goal.region=north", "--set #1: goal.region: is outside the scope"},
 		{"study=\xff", "--set #1: study: is not usable text"},
@@ -363,7 +394,6 @@ func TestLoad_FullStudy(t *testing.T) {
 		{"title", s.Title, "Kettle Plain thaw, concept phase"},
 		{"world", s.World.Name, "mars (changed)"},
 		{"pressure", s.World.SurfacePressure, 700.0},
-		{"baseline", s.World.AtmosphereBaseline, false},
 		{"goal", s.Goal, Goal{Kind: "warming", Warming: 25}},
 		{"rod", s.Designs[0].Particles[0], Particle{Shape: "rod", Length: 8e-6, Diameter: 80e-9, Material: MaterialRef{Name: "iron"}, Spread: 1.2, Oxide: 3e-9, SurfaceScattering: true, Share: 1}},
 		{"share", s.Designs[1].Particles[1].Share, 0.6},
@@ -403,7 +433,7 @@ func TestLoad_Defaults(t *testing.T) {
 		t.Errorf("fate: %+v", f)
 	}
 	w := s.World
-	if w.Name != "mars" || !w.AtmosphereBaseline || w.SurfacePressure != 610 || w.LapseLimit != 0.0025 {
+	if w.Name != "mars" || w.SurfacePressure != 610 || w.LapseLimit != 0.0025 {
 		t.Errorf("world: %+v", w)
 	}
 	sum := 0.0
@@ -421,15 +451,15 @@ func TestLoad_Defaults(t *testing.T) {
 	}
 }
 
-func TestLoad_AtmosphereBaseline(t *testing.T) {
+func TestLoad_NameOfAChangedWorld(t *testing.T) {
 	for change, want := range map[string]bool{
-		"base: mars": true, "radius: 3000 km": true, "air_temperature: 220 K": true, "warm_season_maximum: 10 degC": true, "surface_pressure: 6.1 hPa": true, "bond_albedo: 25 %": true,
+		"base: mars": true, "radius: 3000 km": false, "air_temperature: 220 K": false, "warm_season_maximum: 10 degC": false, "surface_pressure: 6.1 hPa": true, "bond_albedo: 25 %": true,
 		"surface_pressure: 611 Pa": false, "gas: [{species: CO2, share: 100 %}]": false, "gravity: 3.7 m/s2": false, "sunlight: 600 W/m2": false,
 		"bond_albedo: 0.2": false, "emissivity: 1": false, "dust_optical_depth: 0": false, "lapse_limit: 2 K/km": false,
 	} {
 		s := mustLoad(t, smallStudy+"world: {"+change+"}\n")
-		if s.World.AtmosphereBaseline != want {
-			t.Errorf("world {%s}: baseline is %v", change, s.World.AtmosphereBaseline)
+		if (s.World.Name == "mars") != want {
+			t.Errorf("world {%s} is named %q", change, s.World.Name)
 		}
 	}
 }
@@ -549,6 +579,80 @@ func TestStarter(t *testing.T) {
 	}
 }
 
+// The starter study says in a comment what comes out of it: at 1 % sticking the goal is
+// reached in decades and every limit is met, at 100 % it is out of reach.
+func TestStarter_ReachesItsGoal(t *testing.T) {
+	d := assess(t, mustLoad(t, Starter())).Designs[0]
+	const yr = 31557600.0
+	for _, c := range d.Cases {
+		met := 0
+		for _, l := range c.Limits {
+			if l.Known && l.Met {
+				met++
+			}
+		}
+		favourable := c.Sticking == 0.01
+		if got := c.Figures["time_to_goal"]; favourable && (got.Null || math.Abs(got.Value/yr-19) > 1) || !favourable && !got.Null && got.Value < 100*yr {
+			t.Errorf("%s: time to goal %g yr %s", c.Name, got.Value/yr, got.Why)
+		}
+		if (met == len(c.Limits)) != favourable {
+			t.Errorf("%s: %d of %d limits are met", c.Name, met, len(c.Limits))
+		}
+	}
+	windows := d.Cases[1].Figures["windows"]
+	if windows.Value != 4 {
+		t.Errorf("the plant comes in %g windows", windows.Value)
+	}
+}
+
+// A bound of a figure that can be negative may be anything.
+func TestLoad_SignedBounds(t *testing.T) {
+	for id := range mayBeNegative {
+		f, ok := FigureByID(id)
+		if !ok {
+			t.Errorf("%s is no figure", id)
+			continue
+		}
+		for _, bound := range []string{"-1", "0"} {
+			s := mustLoad(t, fmt.Sprintf("%slimits: [{figure: %s, at_least: %s %s}]\n", smallStudy, id, bound, f.Shown))
+			if got := strconv.FormatFloat(s.Limits[0].Bound, 'g', -1, 64); got != bound {
+				t.Errorf("%s: bound %s comes out as %s", id, bound, got)
+			}
+		}
+	}
+}
+
+// A name counts in characters, not in bytes.
+func TestLoad_LongName(t *testing.T) {
+	name := strings.Repeat("\u00fc", 80)
+	if got := mustLoad(t, with("Iron rods", name)).Designs[0].Name; got != name {
+		t.Errorf("name %q", got)
+	}
+}
+
+// No message holds a character that upsets the line it is printed in, whatever is typed.
+func TestLoad_MessagesAreVisible(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		odd := rapid.SampledFrom([]string{`\e[31m`, `\n`, `\u202e`, `\u2066`, `\u2028`, `\u0085`, `\u200f`, `\t`}).Draw(t, "odd")
+		study := rapid.SampledFrom([]string{
+			with("study:", `"st`+odd+`udy":`), with("Iron rods", `"I`+odd+`r"`), with("iron}", `"i`+odd+`n"}`), with("8 um", `"8`+odd+`um"`),
+			with("20 K", `"2`+odd+`K"`), smallStudy + `"fa` + odd + `te": {"x` + odd + `": 1}` + "\n", smallStudy + `limits: [{figure: "w` + odd + `", at_most: 3 K}]` + "\n",
+			smallStudy + `uncertain: [{at: "fate.x` + odd + `", law: uniform, low: 1, high: 2}]` + "\n", smallStudy + `benchmarks: [{design: "x` + odd + `y", figure: burden, value: 3 mg/m2, source: q}]` + "\n",
+			with("iron}", `{table: "i`+odd+`n.csv", density: 3 g/cm3}}`), smallStudy + `fate: {sinks: [{name: "a` + odd + `b", rate: 3}]}` + "\n",
+		}).Draw(t, "study")
+		_, err := Load(Source{Name: "s.yaml", Data: []byte(study)}, []string{`fate.x["` + "\u202e" + `"]=1`})
+		var e *StudyError
+		if !errors.As(err, &e) {
+			t.Fatalf("got %v", err)
+		}
+		for _, m := range e.Mistakes {
+			if strings.ContainsFunc(m.String(), unseen) {
+				t.Fatalf("%q", m.String())
+			}
+		}
+	})
+}
+
 func TestLoad_UncertainDefaults(t *testing.T) {
 	s := mustLoad(t, smallStudy+"uncertain: defaults\n")
 	const yr = 31557600.0
@@ -633,6 +737,9 @@ func TestLoad_Tables(t *testing.T) {
 	write("study/bad.yaml", "DATA:\n  - type: tabulated nk\n    data: |\n      1 1.5 0.1\n      10 2 x\n")
 	write("study/none.yaml", "DATA:\n  - type: formula 1\n")
 	write("study/broken.yaml", "DATA: [\n")
+	write("study/short.csv", "wavelength_um,n,k\n0.21,1.5,0.1\n55.56,2,0.5\n")
+	write("study/whole.csv", "wavelength_um,n,k\n0.2,1.5,0.1\n1000,2,0.5\n")
+	write("study/falling.csv", "wavelength_um,n,k\n50,1.5,0.1\n49.99,2,0.5\n")
 	write("secret.csv", "wavelength_um,n,k\n1,1.5,0.1\n10,2,0.5\n")
 	if err := os.Symlink("../secret.csv", filepath.Join(folder, "study", "link.csv")); err != nil {
 		t.Fatal(err)
@@ -663,12 +770,17 @@ func TestLoad_Tables(t *testing.T) {
 			t.Errorf("%s: tables %+v", name, s.Tables)
 		}
 	}
+	if s, err := load("{table: whole.csv, density: 2260 kg/m3}"); err != nil || s.Designs[0].Particles[0].Material.Extend {
+		t.Errorf("a table of all wavelengths: %v", err)
+	}
 	for name, want := range map[string]string{
+		"short.csv":                         "s.yaml:6:63: designs[Iron rods].particles[0].material: short.csv covers 0.21 um to 55.56 um, not all of 0.2 um to 1000 um; add `extend: true`",
+		"falling.csv":                       "falling.csv:3: designs[Iron rods].particles[0].material.table: wavelength 49.99 um is not above the 50 um before it; the table is named at s.yaml:6:71",
 		"bad.csv":                           "bad.csv:3: designs[Iron rods].particles[0].material.table: k = -0.5 is negative",
 		"bad.yaml":                          `bad.yaml:5: designs[Iron rods].particles[0].material.table: "x" is not a number`,
 		"none.yaml":                         `none.yaml: designs[Iron rods].particles[0].material.table: has no DATA block of type "tabulated nk"`,
 		"broken.yaml":                       "broken.yaml:",
-		"absent.csv":                        "s.yaml:6:71: designs[Iron rods].particles[0].material.table: absent.csv cannot be read",
+		"absent.csv":                        "s.yaml:6:71: designs[Iron rods].particles[0].material.table: absent.csv does not exist: no such file beside the study",
 		"link.csv":                          "s.yaml:6:71: designs[Iron rods].particles[0].material.table: link.csv cannot be read",
 		"../secret.csv":                     "s.yaml:6:71: designs[Iron rods].particles[0].material.table: ../secret.csv leads out of the study's folder",
 		filepath.Join(folder, "secret.csv"): "s.yaml:6:71: designs[Iron rods].particles[0].material.table: ",

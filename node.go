@@ -4,6 +4,8 @@ import (
 	"bytes"
 	"encoding/json"
 	"fmt"
+	"slices"
+	"strconv"
 	"strings"
 
 	"go.yaml.in/yaml/v3"
@@ -18,13 +20,17 @@ type node struct {
 	members []member // of a map, in file order
 	items   []*node  // of a list
 	at      place
-	alias   int // line of the alias that leads here; 0 = none
+	alias   int    // line of the alias that leads here; 0 = none
+	section string // path that the value was given for, where it stands in place of a map; "" = its own
 
 	// What check found out about a scalar.
 	ok       bool
+	faulty   bool // a mistake in it is already on the list
 	quantity Quantity
 	flag     bool
 	row      *Input
+
+	misspelt []string // of a map: keys that are missing and that unknown keys probably mean
 }
 
 type nodeKind int
@@ -94,6 +100,11 @@ func (n *node) word(key string) string {
 func (n *node) on(key string) bool {
 	c := n.child(key)
 	return c != nil && c.flag
+}
+
+// lacks reports whether a map has neither a key nor a misspelling of it.
+func (n *node) lacks(key string) bool {
+	return n.child(key) == nil && (n == nil || !slices.Contains(n.misspelt, key))
 }
 
 // list returns the items of a list key.
@@ -193,8 +204,9 @@ type nodeReader struct {
 }
 
 // read returns the node for y, nil where it cannot be used; the reason is then on the
-// list of mistakes.
-func (r *nodeReader) read(y *yaml.Node, path string, depth, alias int) *node {
+// list of mistakes. The schema, nil where y is out of place, only tells which items are
+// known by their names.
+func (r *nodeReader) read(y *yaml.Node, s *schema, path string, depth, alias int) *node {
 	if r.full {
 		return nil
 	}
@@ -220,20 +232,20 @@ func (r *nodeReader) read(y *yaml.Node, path string, depth, alias int) *node {
 			r.fault(at, path, "", problem{what: "is an alias without its anchor"})
 			return nil
 		}
-		return r.read(y.Alias, path, depth+1, y.Line)
+		return r.read(y.Alias, s, path, depth+1, y.Line)
 	case yaml.ScalarNode:
 		n.text = strings.TrimSpace(y.Value)
 		n.null = y.Tag == "!!null" || n.text == ""
 	case yaml.SequenceNode:
 		n.kind = listNode
 		for i, item := range y.Content {
-			if c := r.read(item, fmt.Sprintf("%s[%d]", path, i), depth+1, alias); c != nil {
+			if c := r.read(item, s.items(), fmt.Sprintf("%s[%s]", path, labelBefore(item, s, i)), depth+1, alias); c != nil {
 				n.items = append(n.items, c)
 			}
 		}
 	case yaml.MappingNode:
 		n.kind = mapNode
-		r.readMembers(n, y, path, depth, alias)
+		r.readMembers(n, y, s, path, depth, alias)
 	default:
 		r.fault(at, path, "", problem{what: "cannot be read"})
 		return nil
@@ -241,7 +253,7 @@ func (r *nodeReader) read(y *yaml.Node, path string, depth, alias int) *node {
 	return n
 }
 
-func (r *nodeReader) readMembers(n *node, y *yaml.Node, path string, depth, alias int) {
+func (r *nodeReader) readMembers(n *node, y *yaml.Node, s *schema, path string, depth, alias int) {
 	lines := make(map[string]int, len(y.Content)/2)
 	for i := 0; i+1 < len(y.Content) && !r.full; i += 2 {
 		key, at := y.Content[i], r.place(y.Content[i].Line, y.Content[i].Column)
@@ -260,10 +272,26 @@ func (r *nodeReader) readMembers(n *node, y *yaml.Node, path string, depth, alia
 			continue
 		}
 		lines[name] = key.Line
-		if v := r.read(y.Content[i+1], joinPath(path, quoteLong(name)), depth+1, alias); v != nil {
+		if v := r.read(y.Content[i+1], s.child(name), joinPath(path, quoteLong(name)), depth+1, alias); v != nil {
 			n.members = append(n.members, member{name, at, v})
 		}
 	}
+}
+
+// labelBefore is [itemLabel] for an item that has not been read yet.
+func labelBefore(item *yaml.Node, s *schema, i int) string {
+	if item.Kind == yaml.AliasNode && item.Alias != nil {
+		item = item.Alias
+	}
+	if s.named() && item.Kind == yaml.MappingNode {
+		for k := 0; k+1 < len(item.Content); k += 2 {
+			key, value := item.Content[k], item.Content[k+1]
+			if name := strings.TrimSpace(value.Value); key.Value == "name" && value.Kind == yaml.ScalarNode && nameFault(name) == "" {
+				return name
+			}
+		}
+	}
+	return strconv.Itoa(i)
 }
 
 // joinPath appends a key to a path.

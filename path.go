@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strconv"
 	"strings"
+	"unicode/utf8"
 )
 
 // segment is one step of a path: a key, or an item of a list by index or name.
@@ -84,8 +85,10 @@ func nameFault(name string) string {
 	switch {
 	case name == "":
 		return "is empty"
-	case len(name) > longest:
-		return fmt.Sprintf("is longer than %d bytes", longest)
+	case utf8.RuneCountInString(name) > longest:
+		return fmt.Sprintf("is longer than %d characters", longest)
+	case strings.ContainsFunc(name, unseen):
+		return unseenFault
 	case strings.ContainsAny(name, `[]"'`):
 		return "holds a bracket or a quotation mark, which paths cannot name"
 	}

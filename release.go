@@ -62,16 +62,12 @@ func (f *facts) release(p *planet) error {
 	f.points = needed
 	f.survival = survived / supply
 	if short {
+		what := fmt.Sprintf("the plumes of %d release points let %.0f %% of the supply through", r.Points, 100*f.survival)
+		if f.survival == 0 {
+			what = fmt.Sprintf("no release rate gets the supply through the plumes of %d release points", r.Points)
+		}
 		f.warnings = append(f.warnings, Warning{"supply.release.points", fmt.Sprintf(
-			"the %d release points let %s of the supply survive the plume; production is sized for the %.0f points that let %.0f %% survive",
-			r.Points, survivalText(f.survival), f.points, 100*plumeGoal)})
+			"%s; production is sized for the %.0f points that let %.0f %% through", what, f.points, 100*plumeGoal)})
 	}
 	return nil
-}
-
-func survivalText(s float64) string {
-	if s == 0 {
-		return "no rate"
-	}
-	return fmt.Sprintf("%.0f %%", 100*s)
 }

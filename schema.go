@@ -45,8 +45,11 @@ var studySchema = sync.OnceValue(func() *schema {
 	return root
 })
 
-// child returns the schema of a key, or nil.
+// child returns the schema of a key, or nil; like items and named it may be asked of nil.
 func (s *schema) child(name string) *schema {
+	if s == nil {
+		return nil
+	}
 	for _, c := range s.children {
 		if c.name == name {
 			return c
@@ -66,11 +69,19 @@ func (s *schema) keys() []string {
 
 // named reports whether the items of a list are known by their name.
 func (s *schema) named() bool {
-	if s.item == nil {
+	if s == nil || s.item == nil {
 		return false
 	}
 	c := s.item.child("name")
 	return c != nil && c.row.Kind == KindName
+}
+
+// items returns the schema of a list's items, or nil.
+func (s *schema) items() *schema {
+	if s == nil {
+		return nil
+	}
+	return s.item
 }
 
 // scalar reports whether a single value other than the row's choices may stand here.

@@ -16,7 +16,7 @@ study: First look at iron rods
 world: mars
 
 # Exactly one of warming, burden, optical_depth. Whole planet, annual mean.
-goal: {warming: 20 K}
+goal: {warming: 10 K}
 
 designs:
   - name: Iron rods
@@ -29,24 +29,29 @@ fate:
   lift_time: 60 d        # mean wait on the ground before wind lifts a particle
   burial_time: 5 yr      # mean time until it is out of the wind's reach for good
   frost_burial: 3 %/yr   # share carried down by seasonal frost and not returned
-  # sticking: 5 %        # chance that two particles that touch stay together. Without it
-                         # the study is assessed twice: at 100 % and at 1 %.
+  # sticking: 5 %        # chance that two particles that touch stay together. Left out on
+                         # purpose: nobody has measured it, and it decides this design.
+                         # Without it the study is assessed twice, at 100 % and at 1 %.
 
 supply:
   route: local           # made there; shipped = made at home and landed
   feedstock: {mineral: hematite, grade: 15 %, recovery: 80 %}
-  plant: {specific_mass: 25 t/(t/d)}
+  plant: {specific_mass: 25 t/(t/d)}                   # landed plant for each tonne a day
   power: {source: fission, specific_mass: 60 kg/kW}
+  release: {points: 40}  # places where particles are let go; with few they clump in the plume
+  # What can be landed: plant and power plant come in launch windows, about every 26 months.
+  # At 1 % sticking 39 kt a window build the plant up in four windows and reach the goal in
+  # about 19 years; at 100 % a programme of this size never gets near what it would take.
+  delivery: {payload: 100 t, flights_per_window: 400, first_window: 4 yr, loss: 2 %}
 
 # Bounds that the board sets on figures; "hazewright catalogue figures" lists them.
 limits:
   - {figure: production_rate, at_most: 5000 t/d}
   - {figure: sunlight_loss, at_most: 12 %}
-
-# Probability laws for what is not known; "defaults" takes the ranges of the catalogue.
-uncertain: defaults
+  - {figure: time_to_goal, at_most: 50 yr}
 
 # Where your numbers come from; the report prints it beside them.
 sources:
   - {at: supply.plant.specific_mass, text: assumption to be replaced by the plant concept}
+  - {at: supply.delivery, text: assumption to be replaced by the delivery concept}
 `

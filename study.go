@@ -28,20 +28,19 @@ type Study struct {
 
 // World is the planet of a study.
 type World struct {
-	Name               string     // "mars", or the given name of an inline world, or "mars (changed)"
-	Base               string     // "mars"
-	Radius             float64    // [m]
-	Gravity            float64    // [m/s2]
-	SurfacePressure    float64    // [Pa]
-	Gas                []GasShare // mole fractions that sum to 1
-	AirTemperature     float64    // of the isothermal column that particles fall through [K]
-	Sunlight           float64    // mean normal-incidence sunlight at the planet [W/m2]
-	BondAlbedo         float64
-	Emissivity         float64 // of the ground, thermal
-	DustOpticalDepth   float64 // natural dust, visible
-	LapseLimit         float64 // [K/m]
-	WarmSeasonMaximum  float64 // warmest ground temperature of the present year [K]
-	AtmosphereBaseline bool    // true if nothing that the emission table depends on was changed
+	Name              string     // "mars", or the given name of an inline world, or "mars (changed)"
+	Base              string     // "mars"
+	Radius            float64    // [m]
+	Gravity           float64    // [m/s2]
+	SurfacePressure   float64    // [Pa]
+	Gas               []GasShare // mole fractions that sum to 1
+	AirTemperature    float64    // of the isothermal column that particles fall through [K]
+	Sunlight          float64    // mean normal-incidence sunlight at the planet [W/m2]
+	BondAlbedo        float64
+	Emissivity        float64 // of the ground, thermal
+	DustOpticalDepth  float64 // natural dust, visible
+	LapseLimit        float64 // [K/m]
+	WarmSeasonMaximum float64 // warmest ground temperature of the present year [K]
 }
 
 // GasShare is one species of the atmosphere.

@@ -4,7 +4,9 @@ import (
 	"bytes"
 	"crypto/sha256"
 	"encoding/hex"
+	"errors"
 	"fmt"
+	"io/fs"
 	"path/filepath"
 	"regexp"
 	"strconv"
@@ -12,6 +14,7 @@ import (
 
 	"go.yaml.in/yaml/v3"
 
+	"hazewright/optics/greenhouse"
 	"hazewright/optics/material"
 )
 
@@ -20,7 +23,10 @@ type opticalTable struct {
 	rows [][3]float64 // wavelength [m], n, k; none if a mistake was found
 }
 
-var tableLine = regexp.MustCompile(`^line (\d+): `)
+var (
+	tableLine  = regexp.MustCompile(`^line (\d+): `)
+	longNumber = regexp.MustCompile(`\d+\.\d{7,}`) // carries the rounding of the change to SI and back
+)
 
 // readTable returns the rows of the table that node n names, reading each file once.
 func (l *loader) readTable(n *node, field string) [][3]float64 {
@@ -43,7 +49,7 @@ func (l *loader) readTable(n *node, field string) [][3]float64 {
 		err = errTooLarge
 	}
 	if err != nil {
-		l.fault(n, field, quoteLong(name), problem{what: "cannot be read: " + err.Error(), hint: "name a file in the study's folder"})
+		l.fault(n, field, quoteLong(name), unreadable(err))
 		return nil
 	}
 	sum := sha256.Sum256(data)
@@ -60,6 +66,51 @@ func (l *loader) readTable(n *node, field string) [][3]float64 {
 	return t.rows
 }
 
+// unreadable says why a table could not be read.
+func unreadable(err error) problem {
+	p := problem{hint: "name a file in the study's folder"}
+	var inner *fs.PathError
+	switch {
+	case errors.Is(err, fs.ErrNotExist):
+		p.what = "does not exist: no such file beside the study"
+		return p
+	case errors.Is(err, fs.ErrPermission):
+		p.what = "cannot be read: no permission"
+		return p
+	case errors.As(err, &inner):
+		err = inner.Err
+	}
+	p.what = "cannot be read: " + err.Error()
+	return p
+}
+
+// neededFrom and neededTo bound the wavelengths [m] at which a material's index must be
+// known: the bands of sunlight and of the thermal, which hold the means and the spectrum
+// too. The radio bands are left without a figure where it is not.
+func neededFrom() float64 { return greenhouse.SolarEdges()[0] }
+func neededTo() float64 {
+	edges := greenhouse.ThermalEdges()
+	return edges[len(edges)-1]
+}
+
+// checkCoverage refuses a table that is too short, unless its ends are to be held.
+func (l *loader) checkCoverage(n *node, m MaterialRef, path string) {
+	if m.Extend || len(m.Rows) == 0 {
+		return
+	}
+	const slack = 1e-6 // relative; tables round
+	from, to := m.Rows[0][0], m.Rows[len(m.Rows)-1][0]
+	if from <= neededFrom()*(1+slack) && to >= neededTo()*(1-slack) {
+		return
+	}
+	um := func(si float64) string { return FormatSI(si, "um", 6) }
+	l.fault(n, path, quoteLong(m.Table), problem{
+		what:    fmt.Sprintf("covers %s to %s, not all of", um(from), um(to)),
+		allowed: fmt.Sprintf("%s to %s", um(neededFrom()), um(neededTo())),
+		hint:    "add `extend: true` to hold the end values outside the table, with a warning, or give a longer table",
+	})
+}
+
 // tableFault notes a mistake inside a table at the table's own line.
 func (l *loader) tableFault(n *node, field, name string, firstLine int, err error) {
 	text := err.Error()
@@ -69,6 +120,10 @@ func (l *loader) tableFault(n *node, field, name string, firstLine int, err erro
 		line += firstLine
 		text = text[len(m[0]):]
 	}
+	text = longNumber.ReplaceAllStringFunc(text, func(number string) string {
+		v, _ := strconv.ParseFloat(number, 64) // the pattern matches numbers only
+		return strconv.FormatFloat(v, 'g', 6, 64)
+	})
 	l.fault(n, field, "", problem{what: text, hint: "the table is named at " + l.position(n.at)})
 	m := &l.mistakes[len(l.mistakes)-1]
 	m.File, m.Line, m.Column = name, line, 0

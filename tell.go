@@ -80,7 +80,7 @@ func (f *facts) caseWarnings() []Warning {
 func uncounted(d *Design) string {
 	var what []string
 	if d.Fate.Dust {
-		what = append(what, "with natural dust (shortens the life of thin rods about 1.5 times)")
+		what = append(what, "with natural dust (for thin rods about 1.5 times)")
 	}
 	if len(d.Particles) > 1 {
 		what = append(what, "between the populations of the mix (about 1.8 times for two)")
@@ -88,7 +88,7 @@ func uncounted(d *Design) string {
 	if what == nil {
 		return "meetings by differential fall and turbulence are not counted yet: sticky particles are lost sooner than computed"
 	}
-	return "meetings " + strings.Join(what, " and ") + " are not counted yet: sticky particles are lost sooner than computed"
+	return "meetings " + strings.Join(what, " and ") + " are not counted yet: sticky particles are lost sooner than computed, by those factors"
 }
 
 // layerShare is the share of the airborne mass inside a fixed layer, 0 without one.
