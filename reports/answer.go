@@ -56,18 +56,49 @@ func limitsWord(limits []hazewright.LimitResult) string {
 	return fmt.Sprintf("all %d met", t.met)
 }
 
-// limitWord is the outcome of one limit: "met", "FAILED x1.8" or "not known".
-func limitWord(l hazewright.LimitResult) string {
+// limitWord is the outcome of one limit: "met", "FAILED x1.8", "FAILED: never" or "not
+// known". v is the figure that it bounds.
+func limitWord(l hazewright.LimitResult, v hazewright.FigureValue) string {
 	switch {
 	case !l.Known:
 		return "not known"
 	case l.Met:
 		return "met"
+	case l.Factor > 0:
+		return "FAILED " + factor(l.Factor)
+	case v.Null && v.Why != "":
+		return "FAILED: " + shortReason(why(v))
 	}
-	if l.Factor <= 0 { // no ratio can be told
-		return "FAILED"
+	return "FAILED" // no ratio can be told
+}
+
+// shortReason is what stands before the explanation: "never" of "never: the supply ends".
+func shortReason(text string) string {
+	short, _, _ := strings.Cut(text, ":")
+	short, _, _ = strings.Cut(short, " (")
+	return short
+}
+
+// limitTone is its tone.
+func limitTone(l hazewright.LimitResult) tone {
+	switch {
+	case !l.Known:
+		return plain
+	case l.Met:
+		return good
 	}
-	return "FAILED " + factor(l.Factor)
+	return bad
+}
+
+// limitsTone is the tone of [limitsWord].
+func limitsTone(limits []hazewright.LimitResult) tone {
+	switch n := count(limits); {
+	case n.failed > 0:
+		return bad
+	case n.met > 0 && n.unknown == 0:
+		return good
+	}
+	return plain
 }
 
 // limitTitle writes a limit: "Production at most 5000 t/d".
@@ -96,22 +127,6 @@ func goalText(g hazewright.Goal) string {
 	return clean(g.Kind)
 }
 
-// neverInTime reports whether the burden would do but the programme never gets there.
-func neverInTime(figures map[string]hazewright.FigureValue) bool {
-	return figures["time_to_goal"].Null && !figures["burden"].Null
-}
-
-// goalWord says whether a design reaches the goal, and if not, why.
-func goalWord(d *hazewright.DesignResult) string {
-	switch {
-	case !d.Reached:
-		return "not reached: " + clean(d.Cause)
-	case neverInTime(d.Figures):
-		return "reached at its burden, never by this programme"
-	}
-	return "reached"
-}
-
 // Rule by which [hinge] names the assumption a design hangs on most.
 const hingeRule = "What a design hangs on is named by a simple rule, not by a sensitivity analysis: sticking where the study does not give it " +
 	"and the production depends on it by more than a tenth, else a lifetime that was given and not computed, else the largest share of the loss budget."
@@ -119,8 +134,17 @@ const hingeRule = "What a design hangs on is named by a simple rule, not by a se
 // hinge names the assumption that the design hangs on most, by hingeRule.
 func hinge(d *hazewright.DesignResult) string {
 	if !d.Reached {
-		return fmt.Sprintf("The goal is not reached (%s); the largest warming found is %s at %s, and it rests on the warming estimate.",
-			clean(d.Cause), quantity(d.MaxWarming, "K"), quantity(d.MaxBurden, "mg/m2"))
+		switch {
+		case d.NeverWarms && d.MaxWarming < 0:
+			return "The warming estimate, by which these particles cool at every burden."
+		case d.NeverWarms:
+			return "The warming estimate, by which no burden of these particles warms."
+		}
+		title, text := warmest(d)
+		return fmt.Sprintf("The goal is not reached (%s). %s: %s, by the warming estimate.", clean(d.Cause), title, text)
+	}
+	if w := d.Figures["warming"]; !w.Null && w.Value <= 0 {
+		return fmt.Sprintf("The warming estimate, by which the burden does not warm: %s.", quantity(w.Value, "K"))
 	}
 	if text := stickingHinge(d); text != "" {
 		return text
@@ -139,6 +163,24 @@ func hinge(d *hazewright.DesignResult) string {
 	}
 	return fmt.Sprintf("Lifetime, through its largest loss: %s takes %s of what is removed; alone it would allow %s.",
 		clean(largest.Name), percent(largest.Share), duration(largest.LifetimeAlone))
+}
+
+// warmest says how far a design that misses the goal comes, with what to call that.
+func warmest(d *hazewright.DesignResult) (title, text string) {
+	at := func(warming, burden float64) string {
+		return fmt.Sprintf("%s at %s", quantity(warming, "K"), quantity(burden, "mg/m2"))
+	}
+	switch n := len(d.Curve); {
+	case d.NeverWarms && d.MaxWarming < 0:
+		return "Largest warming", "none, they cool"
+	case d.NeverWarms:
+		return "Largest warming", "none"
+	case d.Goal.Burden > 0: // it is given, and falls short
+		return "Warming at its burden", at(d.Goal.Warming, d.Goal.Burden)
+	case n > 0 && d.MaxBurden >= d.Curve[n-1].Burden:
+		return "Warming at the end of the curve", at(d.MaxWarming, d.MaxBurden)
+	}
+	return "Largest warming", at(d.MaxWarming, d.MaxBurden)
 }
 
 // stickingHinge says what not knowing the sticking does, "" if that is little.
@@ -182,27 +224,6 @@ func benchmarks(r *hazewright.Result, d *hazewright.DesignResult) []benchmark {
 			row.ratio = v.Value / b.Value
 		}
 		out = append(out, row)
-	}
-	return out
-}
-
-// warning is a warning with the design it belongs to; Design is empty for the study.
-type warning struct {
-	Design string
-	hazewright.Warning
-}
-
-// warnings returns all warnings: of the whole study, those of loading among them, then
-// of each design.
-func warnings(r *hazewright.Result) []warning {
-	var out []warning
-	for _, w := range r.Warnings {
-		out = append(out, warning{"", w})
-	}
-	for i := range r.Designs {
-		for _, w := range r.Designs[i].Warnings {
-			out = append(out, warning{r.Designs[i].Name, w})
-		}
 	}
 	return out
 }

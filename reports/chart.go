@@ -19,7 +19,7 @@ type chart struct {
 	Caption string // how to read it
 	Alt     string // says in words what the drawing shows
 	Kind    string // class of its box: "", "flow" (tall and wide) or "bars"
-	Rows    int    // of a bar chart
+	Height  int    // of a bar chart [px]; 0 for that of its class
 	Legend  []legendEntry
 	Option  template.JS
 	Table   dataTable
@@ -40,9 +40,10 @@ type legendEntry struct {
 	Colour int    // index into the palette, modulo its size
 	Dash   string // stroke-dasharray of a line
 	Thin   bool
-	Dots   bool // a line with dots on it
-	Shape  bool // a grey area
-	Point  bool // a single mark
+	Dots   bool   // a line with dots on it
+	Shape  bool   // a grey area
+	Point  bool   // a single mark
+	Mark   string // SVG path of the mark of a row, 12 px wide
 }
 
 // paletteSize is the number of colours in the style sheet and in boot.js.
@@ -235,10 +236,14 @@ func (l line) series(s charts.SingleSeries) spliced {
 	return spliced{s, extra}
 }
 
-// fill fills in a bar chart: its option, legend and size.
+// fill fills in a bar chart: its option, legend and height, which its rows make.
 func (c *chart) fill(b bars) error {
 	option, err := b.option()
-	c.Option, c.Legend, c.Rows = option, b.legend(), len(b.names)
+	row := 46
+	if b.marks {
+		row = 40
+	}
+	c.Option, c.Legend, c.Height = option, b.legend(), 60+row*len(b.names)
 	return err
 }
 
@@ -369,21 +374,41 @@ type segment struct {
 	values []float64 // one for each bar
 }
 
-// bars describes horizontal stacked bars.
+// bars describes horizontal stacked bars, or rows of marks.
 type bars struct {
 	names    []string // of the bars, first at the top
 	segments []segment
 	x        axis
 	label    string // name of the formatter for segments
+	marks    bool   // a mark for each segment on a logarithmic axis, not stacked
+}
+
+// markShapes tell the segments of rows of marks apart without colour: the chart's name
+// for each, and a path for the legend.
+var markShapes = [...]struct{ chart, svg string }{
+	{"circle", "M0 6a6 6 0 1 0 12 0a6 6 0 1 0 -12 0z"}, {"triangle", "M6 0L12 12H0z"}, {"rect", "M1 1H11V11H1z"}, {"diamond", "M6 -1L13 6L6 13L-1 6z"},
+}
+
+// decades returns the whole decades around the positive values.
+func (b bars) decades() (low, high float64) {
+	low, high = math.Inf(1), 0
+	for _, s := range b.segments {
+		for _, v := range s.values {
+			if v > 0 {
+				low, high = min(low, v), max(high, v)
+			}
+		}
+	}
+	return decadeBelow(low), decadeAbove(high)
 }
 
 func (b bars) option() (template.JS, error) {
 	chart := charts.NewBar()
-	chart.SetGlobalOptions(append(common(opts.Tooltip{Trigger: "item", Formatter: "@fn:item"}, "8", "44"),
-		charts.WithXAxisOpts(opts.XAxis{Type: "value", Name: typographic(b.x.name), NameLocation: "middle", NameGap: 30,
+	chart.SetGlobalOptions(append(common(opts.Tooltip{Trigger: "item", Formatter: "@fn:item"}, "26", "44"),
+		charts.WithXAxisOpts(opts.XAxis{Type: axis{log: b.marks}.kind(), Name: typographic(b.x.name), NameLocation: "middle", NameGap: 30,
 			Min: b.x.low(), Max: b.x.high(), AxisLabel: &opts.AxisLabel{Formatter: "@fn:num", HideOverlap: opts.Bool(true)}}),
 		charts.WithYAxisOpts(opts.YAxis{Type: "category", Data: b.names, Inverse: opts.Bool(true),
-			AxisLabel: &opts.AxisLabel{Width: 130, Overflow: "break"}}),
+			AxisLabel: &opts.AxisLabel{Width: 170, Overflow: "break"}}),
 	)...)
 	for _, s := range b.segments {
 		chart.AddSeries(s.name, nil)
@@ -391,31 +416,63 @@ func (b bars) option() (template.JS, error) {
 	chart.Accept(visitor{change: func(m map[string]any) {
 		m["tooltip"] = with(m["tooltip"], tooltipExtra)
 		m["xAxis"] = []any{chart.XAxisList[0]}
-		m["yAxis"] = []any{with(chart.YAxisList[0], map[string]any{"axisLabel": map[string]any{"interval": 0, "lineHeight": 15}})}
+		labels := map[string]any{"axisLabel": map[string]any{"interval": 0, "lineHeight": 14}}
+		if b.marks {
+			labels["splitLine"] = map[string]any{"show": true} // to follow a row by
+			m["xAxis"] = []any{with(chart.XAxisList[0], axis{log: true, min: b.x.min, max: b.x.max}.extra())}
+		}
+		m["yAxis"] = []any{with(chart.YAxisList[0], labels)}
 		series := make([]spliced, len(b.segments))
 		for i, s := range b.segments {
-			values := make([]float64, len(s.values))
-			for k, v := range s.values {
-				values[k] = round5(v)
+			if b.marks {
+				series[i] = s.marked(chart.MultiSeries[i], i)
+			} else {
+				series[i] = s.stacked(chart.MultiSeries[i], i, b.label)
 			}
-			one := chart.MultiSeries[i]
-			one.Data, one.Stack = values, "all"
-			series[i] = spliced{one, map[string]any{
-				"barMaxWidth": 34,
-				"itemStyle":   map[string]any{"color": fmt.Sprintf("@%d", i%paletteSize)},
-				"label":       map[string]any{"show": true, "formatter": "@fn:" + b.label},
-			}}
 		}
 		m["series"] = series
-		m["aria"] = map[string]any{"enabled": true, "label": map[string]any{"enabled": false}, "decal": map[string]any{"show": true}}
+		m["aria"] = map[string]any{"enabled": true, "label": map[string]any{"enabled": false}, "decal": map[string]any{"show": !b.marks}}
 	}})
 	return encode(chart)
+}
+
+// stacked fills in the i-th segment of stacked bars.
+func (s segment) stacked(series charts.SingleSeries, i int, label string) spliced {
+	values := make([]float64, len(s.values))
+	for k, v := range s.values {
+		values[k] = round5(v)
+	}
+	series.Data, series.Stack = values, "all"
+	return spliced{series, map[string]any{
+		"barMaxWidth": 34,
+		"itemStyle":   map[string]any{"color": fmt.Sprintf("@%d", i%paletteSize)},
+		"label":       map[string]any{"show": true, "formatter": "@fn:" + label},
+	}}
+}
+
+// marked fills in the i-th segment of rows of marks; nothing is drawn where there is nothing.
+func (s segment) marked(series charts.SingleSeries, i int) spliced {
+	points := [][2]float64{}
+	for k, v := range s.values {
+		if v > 0 {
+			points = append(points, [2]float64{round5(v), float64(k)})
+		}
+	}
+	series.Type, series.Data = "scatter", points
+	return spliced{series, map[string]any{
+		"symbol": markShapes[i%len(markShapes)].chart, "symbolSize": 12,
+		"itemStyle": map[string]any{"color": fmt.Sprintf("@%d", i%paletteSize), "opacity": 0.85},
+	}}
 }
 
 func (b bars) legend() []legendEntry {
 	var out []legendEntry
 	for i, s := range b.segments {
-		out = append(out, legendEntry{Name: s.name, Letter: string(rune('A' + i%26)), Colour: i % paletteSize})
+		entry := legendEntry{Name: s.name, Letter: string(rune('A' + i%26)), Colour: i % paletteSize}
+		if b.marks {
+			entry.Letter, entry.Mark = "", markShapes[i%len(markShapes)].svg
+		}
+		out = append(out, entry)
 	}
 	return out
 }

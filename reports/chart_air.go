@@ -31,7 +31,7 @@ func profileChart(r *hazewright.Result) (*chart, error) {
 			top = max(top, z)
 		}
 		if z, ok := heightOf(design.Profile, 0.5); ok {
-			parts = append(parts, fmt.Sprintf("%s %s km", name, significant(z/1e3, 2)))
+			parts = append(parts, fmt.Sprintf("%s: %s km", name, significant(z/1e3, 2)))
 		}
 	}
 	if len(d.lines) == 0 {
@@ -43,12 +43,39 @@ func profileChart(r *hazewright.Result) (*chart, error) {
 	}
 	c.Title = "Where the airborne mass lies."
 	if len(parts) > 0 {
-		c.Title = "Half of the airborne mass is below: " + sentence(parts)
+		c.Title = "Height under which half of the airborne mass lies. " + sentence(parts)
 	}
-	c.Caption = "Share of the airborne mass in each kilometre of height, up to where 99.9 % lies below."
+	c.Caption = "Share of the airborne mass in each kilometre of height, up to where 99.9 % lies below." + shownCase(r) + fixedProfiles(r)
 	c.Table.Note = "Every few heights; all are in profile.csv."
 	c.Alt = "Lines of airborne mass against height for each design. " + c.Title
 	return c, c.draw(d)
+}
+
+// fixedProfiles says where the profile drawn is not the one that warms.
+func fixedProfiles(r *hazewright.Result) string {
+	text := ""
+	for i := range r.Designs {
+		d := &r.Designs[i]
+		switch p := d.Design.Fate.Profile; {
+		case len(d.Profile) == 0:
+		case p.Kind == "layer":
+			text += fmt.Sprintf(" %s: drawn is what the fall makes of it; the warming uses the study's layer from %s to %s km, in which %s of the mass drawn lies.",
+				clean(d.Name), significant(p.Bottom/1e3, 3), significant(p.Top/1e3, 3), percent(d.LayerShare))
+		case p.Kind == "mixed":
+			text += fmt.Sprintf(" %s: drawn is what the fall makes of it; the warming takes it as mixed.", clean(d.Name))
+		}
+	}
+	return text
+}
+
+// shownCase says which case a chart shows that depends on sticking, where it is not given.
+func shownCase(r *hazewright.Result) string {
+	for i := range r.Designs {
+		if d := &r.Designs[i]; d.StickingCase != "" {
+			return " Where sticking is not given: " + stickingCase(d) + "."
+		}
+	}
+	return ""
 }
 
 // below returns the points up to a height [km].
@@ -101,7 +128,7 @@ func fallChart(r *hazewright.Result) (*chart, error) {
 			c.Table.Rows = append(c.Table.Rows, []string{name, significant(p[1], 3), significant(p[0], 3)})
 		}
 		if v := design.Figures["fall_speed"]; !v.Null {
-			parts = append(parts, fmt.Sprintf("%s %s", name, pretty(v.Value, "mm/s")))
+			parts = append(parts, fmt.Sprintf("%s: %s", name, pretty(v.Value, "mm/s")))
 		}
 	}
 	if len(d.lines) == 0 {
@@ -111,7 +138,7 @@ func fallChart(r *hazewright.Result) (*chart, error) {
 	d.y.max = niceAbove(highest(d))
 	c.Title = "Fall speed grows with height."
 	if len(parts) > 0 {
-		c.Title = "At the ground they fall at: " + sentence(parts)
+		c.Title = "Fall speed at the ground. " + sentence(parts)
 	}
 	c.Caption = "Mean fall speed, weighted by mass. Thinner air slips more past small particles, so they fall faster high up."
 	c.Table.Note = "Every few heights; all are in profile.csv."
@@ -151,14 +178,14 @@ func lossChart(r *hazewright.Result) (*chart, error) {
 			c.Table.Rows = append(c.Table.Rows, []string{clean(d.Name), name, percent(l.Share), alone})
 		}
 		if largest.Share > 0 {
-			parts = append(parts, fmt.Sprintf("%s: %s takes %s", clean(d.Name), clean(largest.Name), percent(largest.Share)))
+			parts = append(parts, fmt.Sprintf("%s: %s %s", clean(d.Name), clean(largest.Name), percent(largest.Share)))
 		}
 	}
 	if len(with) == 0 {
 		return nil, nil
 	}
-	c.Title = "Losses: " + sentence(parts)
-	c.Caption = "How airborne mass leaves for good, at steady state. What settles and is lifted again is not lost."
+	c.Title = "Largest loss. " + sentence(parts)
+	c.Caption = "How airborne mass leaves for good, at steady state. What settles and is lifted again is not lost." + shownCase(r)
 	c.Alt = "One bar for each design, parted by loss. " + c.Title
 	return c, c.fill(b)
 }
@@ -167,12 +194,16 @@ func lossChart(r *hazewright.Result) (*chart, error) {
 func missingDesigns(r *hazewright.Result) string {
 	var names []string
 	for i := range r.Designs {
-		if !r.Designs[i].Reached {
-			names = append(names, fmt.Sprintf("%s (%s)", clean(r.Designs[i].Name), clean(r.Designs[i].Cause)))
+		if r.Designs[i].Programme == nil {
+			cause := r.Designs[i].Cause
+			if r.Designs[i].Reached {
+				cause = why(r.Designs[i].Figures["production_rate"])
+			}
+			names = append(names, fmt.Sprintf("%s (%s)", clean(r.Designs[i].Name), prettyText(clean(cause))))
 		}
 	}
 	if len(names) == 0 {
 		return ""
 	}
-	return "Without a burden there is no lifetime, supply or schedule to show for: " + strings.Join(names, ", ") + "."
+	return "No supply or schedule to show for: " + strings.Join(names, ", ") + "."
 }

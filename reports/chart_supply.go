@@ -3,6 +3,7 @@ package reports
 import (
 	"fmt"
 	"html/template"
+	"slices"
 	"strings"
 
 	"github.com/go-echarts/go-echarts/v2/charts"
@@ -141,36 +142,29 @@ func sankey(links []logistics.Flow) (template.JS, error) {
 // scheduleChart shows warming against time as capacity is landed and the burden builds
 // up.
 func scheduleChart(r *hazewright.Result) (*chart, error) {
-	c := &chart{ID: "schedule", Table: dataTable{Head: []string{"Design", "Time [yr]", "Capacity [t/d]", "Production [t/d]", "Warming [K]"}}}
+	c := &chart{ID: "schedule", Table: dataTable{Head: []string{"Design", "Case", "Time [yr]", "Capacity [t/d]", "Production [t/d]", "Warming [K]"}}}
 	d := xy{x: axis{name: "Time from the start of the programme [yr]"}, y: axis{name: "Warming [K]"}}
 	if r.Study.Goal.Kind == "warming" {
 		d.goal, d.goalText = r.Study.Goal.Warming, "goal "+pretty(r.Study.Goal.Warming, "K")
 	}
 	shortest, longest := 0.0, 0.0
-	var parts []string
-	for i := range r.Designs {
-		design := &r.Designs[i]
-		if design.Programme == nil || len(design.Programme.BuildUp.Time) == 0 {
-			continue
+	eachCourse(r, func(v variant, l line) {
+		if len(v.programme.BuildUp.Time) == 0 {
+			return
 		}
-		s := design.Programme.BuildUp
-		name := clean(design.Name)
-		d.lines = append(d.lines, line{name: name, points: inYears(s), colour: i, dash: i})
+		s := v.programme.BuildUp
+		l.points = inYears(s)
+		d.lines = append(d.lines, l)
 		end := s.Time[len(s.Time)-1] / year
 		if shortest == 0 || end < shortest {
 			shortest = end
 		}
 		longest = max(longest, end)
 		for k := 0; k < len(s.Time); k += max(len(s.Time)/24, 1) {
-			c.Table.Rows = append(c.Table.Rows, []string{name, significant(s.Time[k]/year, 3), bare(s.Capacity[k], "t/d"),
+			c.Table.Rows = append(c.Table.Rows, []string{clean(v.Name), clean(v.name), significant(s.Time[k]/year, 3), bare(s.Capacity[k], "t/d"),
 				bare(s.Production[k], "t/d"), significant(s.Warming[k], 3)})
 		}
-		if v := design.Figures["time_to_goal"]; v.Null {
-			parts = append(parts, name+" never reaches the goal")
-		} else {
-			parts = append(parts, fmt.Sprintf("%s reaches the goal after %s", name, duration(v.Value)))
-		}
-	}
+	})
 	if len(d.lines) == 0 {
 		return nil, nil
 	}
@@ -184,11 +178,66 @@ func scheduleChart(r *hazewright.Result) (*chart, error) {
 		}
 	}
 	d.y.max = niceAbove(1.04 * highest(d))
-	c.Title = sentence(parts)
-	c.Caption = "Warming follows the burden at once here; ground and ice would lag."
+	c.Title = "Time to the goal. " + byCase(r, func(v variant) string {
+		if t := v.figures["time_to_goal"]; !t.Null {
+			return prettyText(duration(t.Value))
+		}
+		return "never"
+	})
+	c.Caption = "Warming follows the burden at once here; ground and ice would lag. The schedule does not count wear while the plant is landed." + dottedCase(r)
 	c.Table.Note = "Every few times; all are in schedule.csv."
 	c.Alt = "Lines of warming against time for each design, with the goal as a level line. " + c.Title
 	return c, c.draw(d)
+}
+
+// eachCourse calls draw for every design and sticking case that has a programme, with
+// the line to draw it by: full for the case shown first, thin with dots for the others,
+// which are left out where there are too many designs.
+func eachCourse(r *hazewright.Result, draw func(v variant, l line)) {
+	for i := range r.Designs {
+		for k, v := range variantsOf(&r.Designs[i]) {
+			if v.programme == nil || k > 0 && len(r.Designs) > crowd {
+				continue
+			}
+			l := line{name: clean(v.Name), colour: i, dash: i, thin: k > 0}
+			if v.name != "" {
+				l.name += ", " + v.condition()
+			}
+			draw(v, l)
+		}
+	}
+}
+
+// byCase says one thing of every design that has a programme, with the case where they
+// differ: "Iron rods: never at 100 % sticking, 54 yr at 1 % sticking".
+func byCase(r *hazewright.Result, text func(v variant) string) string {
+	var parts []string
+	for i := range r.Designs {
+		var texts, full []string
+		for _, v := range variantsOf(&r.Designs[i]) {
+			if v.programme != nil {
+				texts = append(texts, text(v))
+				full = append(full, text(v)+" "+v.condition())
+			}
+		}
+		switch distinct := slices.Compact(slices.Clone(texts)); {
+		case len(distinct) == 1:
+			parts = append(parts, clean(r.Designs[i].Name)+": "+distinct[0])
+		case len(distinct) > 1:
+			parts = append(parts, clean(r.Designs[i].Name)+": "+strings.Join(full, ", "))
+		}
+	}
+	return sentence(parts)
+}
+
+// dottedCase explains the lines of the further sticking cases.
+func dottedCase(r *hazewright.Result) string {
+	for i := range r.Designs {
+		if len(r.Designs[i].Cases) > 1 && len(r.Designs) <= crowd {
+			return " Where sticking is not given, full lines are the first case and thin lines with dots the other."
+		}
+	}
+	return shownCase(r)
 }
 
 func inYears(s logistics.Series) [][2]float64 {
@@ -211,81 +260,97 @@ func positive(points [][2]float64, least float64) [][2]float64 {
 
 // endingChart shows what is left of the warming after supply ends.
 func endingChart(r *hazewright.Result) (*chart, error) {
-	c := &chart{ID: "ending", Table: dataTable{Head: []string{"Design", "Time after supply ends [yr]", "Warming [K]"}}}
+	c := &chart{ID: "ending", Table: dataTable{Head: []string{"Design", "Case", "Time after supply ends [yr]", "Warming [K]"}}}
 	d := xy{x: axis{name: "Time after supply ends [yr]"}, y: axis{name: "Warming [K]"}}
-	var parts []string
 	end := 0.0
-	for i := range r.Designs {
-		design := &r.Designs[i]
-		if design.Programme == nil || len(design.Programme.Ending.Time) == 0 {
-			continue
+	eachCourse(r, func(v variant, l line) {
+		s := v.programme.Ending
+		if len(s.Time) == 0 {
+			return
 		}
-		s := design.Programme.Ending
-		name := clean(design.Name)
-		d.lines = append(d.lines, line{name: name, points: inYears(s), colour: i, dash: i})
+		l.points = inYears(s)
+		d.lines = append(d.lines, l)
 		for k := 0; k < len(s.Time); k += max(len(s.Time)/24, 1) {
-			c.Table.Rows = append(c.Table.Rows, []string{name, significant(s.Time[k]/year, 3), significant(s.Warming[k], 3)})
+			c.Table.Rows = append(c.Table.Rows, []string{clean(v.Name), clean(v.name), significant(s.Time[k]/year, 3), significant(s.Warming[k], 3)})
 		}
-		v := design.Figures["half_loss_time"]
-		if v.Null {
-			parts = append(parts, name+" keeps more than half of its warming")
-			end = max(end, s.Time[len(s.Time)-1]/year)
-			continue
+		last := s.Time[len(s.Time)-1]
+		if half := v.figures["half_loss_time"]; !half.Null {
+			last = min(last, 4*half.Value)
 		}
-		end = max(end, min(4*v.Value, s.Time[len(s.Time)-1])/year)
-		parts = append(parts, fmt.Sprintf("%s loses half of its warming in %s", name, duration(v.Value)))
-	}
+		end = max(end, last/year)
+	})
 	if len(d.lines) == 0 {
 		return nil, nil
 	}
 	d.x.max = niceAbove(end)
 	d.y.max = niceAbove(highest(d))
-	c.Title = "If supply ends: " + sentence(parts)
-	c.Caption = "From the steady state at the goal, up to four times the longest half-loss time. Loose particles on the ground go on feeding the air."
+	c.Title = "Time until half of the warming is gone after supply ends. " + byCase(r, func(v variant) string {
+		if half := v.figures["half_loss_time"]; !half.Null {
+			return prettyText(duration(half.Value))
+		}
+		return "never"
+	})
+	c.Caption = "From the steady state at the goal, up to four times the longest half-loss time. Loose particles on the ground go on feeding the air." + dottedCase(r)
 	c.Table.Note = "Every few times; all are in schedule.csv."
 	c.Alt = "Falling lines of warming against time after supply ends. " + c.Title
 	return c, c.draw(d)
 }
 
+// spreadOfBars is how far apart the totals of bars may lie on one linear axis: beyond it
+// the least is a line too thin to see, and marks on a logarithmic axis take over.
+const spreadOfBars = 30.0
+
 // landedChart shows what must be landed if the particles are made on the planet and if
-// they are shipped.
+// they are shipped: stacked bars, or marks for the parts where the masses lie far apart.
 func landedChart(r *hazewright.Result) (*chart, error) {
-	c := &chart{ID: "landed", Kind: "bars", Table: dataTable{Head: []string{"Design", "Route", "Plant [kt]", "Power plant [kt]", "Particles [kt]", "All [kt]", "Flights", "Windows"}}}
+	c := &chart{ID: "landed", Kind: "bars", Table: dataTable{Head: []string{"Design", "Case", "Route", "Plant [kt]", "Power plant [kt]", "Particles [kt]", "All [kt]", "Flights", "Windows"}}}
 	b := bars{x: axis{name: "Landed mass [kt]"}, label: "letter"}
 	b.segments = []segment{{name: "production plant"}, {name: "power plant"}, {name: "particles"}}
-	var parts, crossovers []string
-	for i := range r.Designs {
-		d := &r.Designs[i]
-		if d.Programme == nil {
-			continue
+	var totals []float64
+	var crossovers []string
+	eachCourse(r, func(v variant, l line) {
+		p := v.programme
+		name := clean(v.Name)
+		if v.name != "" {
+			name += ", " + percent(v.sticking)
 		}
-		name := clean(d.Name)
-		p := d.Programme
 		for _, w := range []struct {
 			name string
 			way  logistics.Way
 		}{{"made there", p.Local}, {"shipped", p.Shipped}} {
 			b.names = append(b.names, fmt.Sprintf("%s, %s: %s", name, w.name, pretty(w.way.LandedMass, "kt")))
-			for k, v := range []float64{w.way.PlantMass, w.way.PowerMass, w.way.ParticleMass} {
-				b.segments[k].values = append(b.segments[k].values, v/1e6)
+			for k, mass := range []float64{w.way.PlantMass, w.way.PowerMass, w.way.ParticleMass} {
+				b.segments[k].values = append(b.segments[k].values, mass/1e6)
 			}
-			c.Table.Rows = append(c.Table.Rows, []string{name, w.name, bare(w.way.PlantMass, "kt"), bare(w.way.PowerMass, "kt"),
+			totals = append(totals, w.way.LandedMass/1e6)
+			c.Table.Rows = append(c.Table.Rows, []string{clean(v.Name), clean(v.name), w.name, bare(w.way.PlantMass, "kt"), bare(w.way.PowerMass, "kt"),
 				bare(w.way.ParticleMass, "kt"), bare(w.way.LandedMass, "kt"), bare(w.way.Flights, "1"), bare(w.way.Windows, "1")})
 		}
 		crossover := why(hazewright.FigureValue{Why: p.Crossover.Why})
 		if p.Crossover.Known() {
 			crossover = fmt.Sprintf("shipping has landed more after %s of supply", duration(p.Crossover.Value))
 		}
-		crossovers = append(crossovers, fmt.Sprintf("%s: %s", name, crossover))
-		if p.Local.LandedMass > 0 {
-			parts = append(parts, fmt.Sprintf("%s: %s to make it there, %s to ship it", name, pretty(p.Local.LandedMass, "kt"), pretty(p.Shipped.LandedMass, "kt")))
-		}
-	}
+		crossovers = append(crossovers, fmt.Sprintf("%s: %s", l.name, prettyText(crossover)))
+	})
 	if len(b.names) == 0 {
 		return nil, nil
 	}
-	c.Title = sentence(parts)
-	c.Caption = "Made there: plant and its power for the capacity. Shipped: the particles to fill the inventory once, and power to release them. Spares and renewal come on top. " + strings.Join(crossovers, "; ") + "."
-	c.Alt = "Two bars of landed mass for each design, made on the planet and shipped. " + c.Title
+	c.Title = "Landed mass if made there. " + byCase(r, func(v variant) string { return pretty(v.programme.Local.LandedMass, "kt") })
+	c.Caption = "Made there: plant and its power for the capacity. Shipped: the particles to fill the inventory once, and power to release them. Spares and renewal come on top. "
+	for i := range r.Designs {
+		if len(r.Designs[i].Cases) > 0 {
+			c.Caption += "Where sticking is not given, its percentage follows the name. "
+			break
+		}
+	}
+	if slices.Max(totals) > spreadOfBars*slices.Min(totals) && slices.Min(totals) > 0 {
+		b.marks = true
+		b.x.name += ", logarithmic"
+		b.segments = append(b.segments, segment{"all together", totals})
+		b.x.min, b.x.max = b.decades()
+		c.Caption += "The masses lie too far apart for bars on one scale: each mark is one part. "
+	}
+	c.Caption += strings.Join(crossovers, "; ") + "."
+	c.Alt = "Landed mass by part, made on the planet and shipped, for each design. " + c.Title
 	return c, c.fill(b)
 }

@@ -24,6 +24,7 @@ func warmingChart(r *hazewright.Result) (*chart, error) {
 	}
 	var low, points []line
 	outside := false
+	crowded := len(r.Designs) > crowd
 	for i := range r.Designs {
 		design := &r.Designs[i]
 		name := clean(design.Name)
@@ -44,10 +45,10 @@ func warmingChart(r *hazewright.Result) (*chart, error) {
 		if curve := add(design.Curve, "as in the study"); len(curve) > 0 {
 			d.lines = append(d.lines, line{name: name, points: curve, colour: i, dash: i})
 		}
-		if curve := add(design.CurveLow, "held low"); len(curve) > 0 {
+		if curve := add(design.CurveLow, "held low"); len(curve) > 0 && !crowded {
 			low = append(low, line{name: name + ", held low", points: thin(curve, 15), colour: i, dash: i, thin: true})
 		}
-		if design.Reached && design.Goal.Burden > 0 {
+		if design.Reached && design.Goal.Burden > 0 && !crowded {
 			points = append(points, line{name: name + ", its burden", points: [][2]float64{{design.Goal.Burden * 1e6, design.Goal.Warming}}, colour: i, point: true})
 		}
 	}
@@ -57,7 +58,12 @@ func warmingChart(r *hazewright.Result) (*chart, error) {
 	}
 	d.x.min, d.x.max = extent(d.lines, 0, true)
 	c.Title = warmingFinding(r)
-	c.Caption = "Annual-mean warming of the whole planet. Thin lines with dots: the same particles held in the lowest 2 km. Diamond: the design's burden."
+	c.Caption = "Annual-mean warming of the whole planet. "
+	if crowded {
+		c.Caption += "The same particles held low, and each design's burden, are in the tables."
+	} else {
+		c.Caption += "Thin lines with dots: the same particles held low, their density falling with height as exp(-z/2 km). Diamond: the design's burden."
+	}
 	if outside {
 		c.Caption += " Parts of the curves lie outside the estimate's validity; the table says which."
 	}
@@ -65,20 +71,27 @@ func warmingChart(r *hazewright.Result) (*chart, error) {
 	return c, c.draw(d)
 }
 
+// crowd is how many designs a chart can show with more than one mark each.
+const crowd = 6
+
 func warmingFinding(r *hazewright.Result) string {
 	var parts []string
 	for i := range r.Designs {
 		d := &r.Designs[i]
 		b := d.Figures["burden"]
-		switch {
+		text := pretty(b.Value, "mg/m2")
+		switch low := d.Figures["burden_low_held"]; {
+		case d.NeverWarms:
+			text = "never warms"
 		case !d.Reached || b.Null:
-			parts = append(parts, fmt.Sprintf("%s tops out at %s", clean(d.Name), pretty(d.MaxWarming, "K")))
-		case !d.Figures["burden_low_held"].Null && b.Value > 0:
-			parts = append(parts, fmt.Sprintf("%s needs %s, held low %s", clean(d.Name), pretty(b.Value, "mg/m2"),
-				factor(d.Figures["burden_low_held"].Value/b.Value)))
-		default:
-			parts = append(parts, fmt.Sprintf("%s needs %s, held low never", clean(d.Name), pretty(b.Value, "mg/m2")))
+			title, at := warmest(d)
+			text = strings.ToLower(title[:1]) + title[1:] + " " + prettyText(at)
+		case low.Null && low.Why != "":
+			text += ", held low not reached"
+		case !low.Null && b.Value > 0:
+			text += ", held low " + prettyText(factor(low.Value/b.Value))
 		}
+		parts = append(parts, clean(d.Name)+": "+text)
 	}
 	return sentence(parts)
 }
@@ -184,13 +197,13 @@ func spectrumFinding(r *hazewright.Result, what, id string) string {
 	for i := range r.Designs {
 		d := &r.Designs[i]
 		if v := d.Figures[id]; !v.Null && len(d.Spectrum) > 0 {
-			parts = append(parts, fmt.Sprintf("%s %s", clean(d.Name), pretty(v.Value, "m2/kg")))
+			parts = append(parts, fmt.Sprintf("%s: %s", clean(d.Name), pretty(v.Value, "m2/kg")))
 		}
 	}
 	if len(parts) == 0 {
 		return fmt.Sprintf("Spectral %s per kilogram.", what)
 	}
-	return fmt.Sprintf("Mean thermal %s per kilogram: %s", what, sentence(parts))
+	return fmt.Sprintf("Mean thermal %s per kilogram. %s", what, sentence(parts))
 }
 
 func decadeBelow(v float64) float64 { return math.Pow(10, math.Floor(math.Log10(v))) }
@@ -222,7 +235,7 @@ func emissionChart(r *hazewright.Result) (*chart, error) {
 			}
 		}
 		if deepest > 0 {
-			parts = append(parts, fmt.Sprintf("%s holds back most near %s um", clean(design.Name), significant(1e6*math.Sqrt(edges[at]*edges[at+1]), 2)))
+			parts = append(parts, fmt.Sprintf("%s: most held back near %s um", clean(design.Name), significant(1e6*math.Sqrt(edges[at]*edges[at+1]), 2)))
 		}
 	}
 	if len(with) == 0 {

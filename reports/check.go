@@ -66,10 +66,13 @@ func (c *checker) design(d *hazewright.DesignResult) {
 		c.figures(at+", "+k.Name, k.Figures)
 		c.limits(at+", "+k.Name, k.Limits)
 		c.numbers(at+": sticking case", k.Sticking)
+		c.losses(at+", "+k.Name, k.Losses)
+		if k.Programme != nil {
+			c.programme(at+", "+k.Name, k.Programme)
+		}
 	}
-	for _, l := range d.Losses {
-		c.numbers(at+": loss "+l.Name, l.Share, l.LifetimeAlone)
-	}
+	c.losses(at, d.Losses)
+	c.numbers(at+": share inside the layer", d.LayerShare)
 	for _, curve := range [][]hazewright.CurvePoint{d.Curve, d.CurveLow, {d.Goal}} {
 		for _, p := range curve {
 			c.numbers(at+": warming curve", p.Burden, p.Warming, p.SunlightLoss)
@@ -88,10 +91,16 @@ func (c *checker) design(d *hazewright.DesignResult) {
 	}
 	for _, p := range d.Populations {
 		c.numbers(at+": population "+p.Name, p.Share, p.Density, p.ParticleMass, p.KappaThermal, p.KappaThermalExt,
-			p.KappaSolarExt, p.KappaSolarAbs, p.OpticsError, p.FallSpeed, p.Lifetime)
+			p.KappaSolarExt, p.KappaSolarAbs, p.OpticsError, p.FallSpeed, p.Lifetime, p.Oxide)
 	}
 	if d.Programme != nil {
 		c.programme(at, d.Programme)
+	}
+}
+
+func (c *checker) losses(where string, losses []hazewright.Loss) {
+	for _, l := range losses {
+		c.numbers(where+": loss "+l.Name, l.Share, l.LifetimeAlone)
 	}
 }
 
@@ -102,7 +111,8 @@ func (c *checker) programme(where string, p *logistics.Programme) {
 		c.numbers(where+": mass flow "+f.Name, f.Rate)
 	}
 	for _, way := range []logistics.Way{p.Local, p.Shipped} {
-		c.numbers(where+": landed mass", way.PlantMass, way.PowerMass, way.ParticleMass, way.LandedMass, way.Flights, way.Windows)
+		c.numbers(where+": landed mass", way.PlantMass, way.PowerMass, way.ParticleMass, way.LandedMass, way.Flights, way.Windows,
+			way.LandedPerWindow, way.LandedPerWindowNext, way.FlightsPerWindow)
 	}
 	c.numbers(where+": crossover", p.Crossover.Value)
 	for _, s := range []logistics.Series{p.BuildUp, p.Ending} {

@@ -24,12 +24,13 @@ type File struct {
 //	designs.csv        one row for each design and sticking case, all figures as columns
 //	figures.csv        the same, one row for each figure, with its note or why it is missing
 //	limits.csv         limits held against each design and case
-//	losses.csv         loss budget
+//	losses.csv         loss budget of each design and case
 //	gates.csv          cautions and gates
 //	warming_curve.csv  warming against burden, placed as the study says and held low
 //	spectrum.csv       optics per kilogram against wavelength
 //	profile.csv        airborne mass and fall speed against height
-//	schedule.csv       the programme against time
+//	schedule.csv       the programme against time, for each case
+//	warnings.csv       all warnings, with the sticking case in which they hold
 //	inputs.csv         every effective input with its origin and source
 func CSV(r *hazewright.Result) ([]File, error) {
 	if err := check(r); err != nil {
@@ -43,12 +44,13 @@ func CSV(r *hazewright.Result) ([]File, error) {
 		{"designs.csv", designsHeader(), designsRows},
 		{"figures.csv", []string{"design", "case", "figure", "value", "unit", "note", "why"}, figuresRows},
 		{"limits.csv", []string{"design", "case", "figure", "side", "bound", "unit", "met", "factor"}, limitsRows},
-		{"losses.csv", []string{"design", "loss", "share [1]", "lifetime_alone [s]"}, lossesRows},
+		{"losses.csv", []string{"design", "case", "loss", "share [1]", "lifetime_alone [s]"}, lossesRows},
 		{"gates.csv", []string{"design", "gate", "title", "state", "finding", "next_step", "source"}, gatesRows},
 		{"warming_curve.csv", []string{"design", "placed", "burden [kg/m2]", "warming [K]", "sunlight_loss [1]", "valid"}, curveRows},
 		{"spectrum.csv", []string{"design", "wavelength [m]", "ext [m2/kg]", "abs [m2/kg]", "sca [m2/kg]", "g [1]", "method", "error [1]"}, spectrumRows},
 		{"profile.csv", []string{"design", "height [m]", "mass_share [1/m]", "fall_speed [m/s]"}, profileRows},
 		{"schedule.csv", scheduleHeader, scheduleRows},
+		{"warnings.csv", []string{"design", "case", "where", "warning"}, warningsRows},
 		{"inputs.csv", []string{"input", "as_written", "value", "unit", "origin", "position", "source", "title"}, inputsRows},
 	}
 	files := make([]File, 0, len(tables))
@@ -105,30 +107,6 @@ func guard(s string) string {
 	return s
 }
 
-// variant is a design with the figures and limits of one sticking case.
-type variant struct {
-	design, name string // name is "" where sticking was given
-	reached      bool
-	cause        string
-	figures      map[string]hazewright.FigureValue
-	limits       []hazewright.LimitResult
-}
-
-// variants returns each design once, or once for each of its sticking cases.
-func variants(r *hazewright.Result) []variant {
-	var out []variant
-	for i := range r.Designs {
-		d := &r.Designs[i]
-		if len(d.Cases) == 0 {
-			out = append(out, variant{d.Name, "", d.Reached, d.Cause, d.Figures, d.Limits})
-		}
-		for _, c := range d.Cases {
-			out = append(out, variant{d.Name, c.Name, d.Reached, d.Cause, c.Figures, c.Limits})
-		}
-	}
-	return out
-}
-
 func designsHeader() []string {
 	header := []string{"design", "case", "reached", "cause"}
 	for _, def := range hazewright.Figures() {
@@ -139,7 +117,7 @@ func designsHeader() []string {
 
 func designsRows(r *hazewright.Result, out *rows) {
 	for _, v := range variants(r) {
-		cells := []any{v.design, v.name, v.reached, v.cause}
+		cells := []any{v.Name, v.name, v.reached, v.cause}
 		for _, def := range hazewright.Figures() {
 			cells = append(cells, cell(v.figures[def.ID]))
 		}
@@ -158,7 +136,7 @@ func figuresRows(r *hazewright.Result, out *rows) {
 	for _, v := range variants(r) {
 		for _, def := range hazewright.Figures() {
 			f := v.figures[def.ID]
-			out.add(v.design, v.name, def.ID, cell(f), def.Unit, f.Note, f.Why)
+			out.add(v.Name, v.name, def.ID, cell(f), def.Unit, f.Note, f.Why)
 		}
 	}
 }
@@ -173,19 +151,19 @@ func limitsRows(r *hazewright.Result, out *rows) {
 			if l.Factor != nil {
 				ratio = *l.Factor
 			}
-			out.add(v.design, v.name, l.Figure, l.Side, l.Bound, l.Unit, met, ratio)
+			out.add(v.Name, v.name, l.Figure, l.Side, l.Bound, l.Unit, met, ratio)
 		}
 	}
 }
 
 func lossesRows(r *hazewright.Result, out *rows) {
-	for _, d := range r.Designs {
-		for _, l := range d.Losses {
+	for _, v := range variants(r) {
+		for _, l := range v.losses {
 			var alone any
 			if l.LifetimeAlone > 0 {
 				alone = l.LifetimeAlone
 			}
-			out.add(d.Name, l.Name, l.Share, alone)
+			out.add(v.Name, v.name, l.Name, l.Share, alone)
 		}
 	}
 }
@@ -247,26 +225,32 @@ func inputsRows(r *hazewright.Result, out *rows) {
 		if in.HasSI {
 			si = in.SI
 		}
-		out.add(in.Path, in.Text, si, in.Unit, in.Origin.Kind, in.Origin.Pos, in.Source, in.Title)
+		out.add(in.Path, in.Text, si, in.Unit, in.Origin.Kind, position(r.Study, in.Origin.Pos), in.Source, in.Title)
 	}
 }
 
-var scheduleHeader = []string{"design", "part", "time [s]", "capacity [kg/s]", "production [kg/s]", "airborne [kg]", "ground [kg]", "warming [K]"}
+var scheduleHeader = []string{"design", "case", "part", "time [s]", "capacity [kg/s]", "production [kg/s]", "airborne [kg]", "ground [kg]", "warming [K]"}
 
 // scheduleRows writes the build-up from the start of the programme, then the ending
 // from the end of supply.
 func scheduleRows(r *hazewright.Result, out *rows) {
-	for _, d := range r.Designs {
-		if d.Programme == nil {
+	for _, v := range variants(r) {
+		if v.programme == nil {
 			continue
 		}
 		for _, part := range []struct {
 			name string
 			s    logistics.Series
-		}{{"build-up", d.Programme.BuildUp}, {"ending", d.Programme.Ending}} {
+		}{{"build-up", v.programme.BuildUp}, {"ending", v.programme.Ending}} {
 			for i, t := range part.s.Time {
-				out.add(d.Name, part.name, t, part.s.Capacity[i], part.s.Production[i], part.s.Airborne[i], part.s.Ground[i], part.s.Warming[i])
+				out.add(v.Name, v.name, part.name, t, part.s.Capacity[i], part.s.Production[i], part.s.Airborne[i], part.s.Ground[i], part.s.Warming[i])
 			}
 		}
+	}
+}
+
+func warningsRows(r *hazewright.Result, out *rows) {
+	for _, w := range Warnings(r) {
+		out.add(w.Design, w.Case, w.Where, w.Text)
 	}
 }

@@ -48,7 +48,7 @@ func fixtureStudy() *hazewright.Study {
 		World: hazewright.World{Name: "mars", Base: "mars", Radius: 3389.5e3, Gravity: 3.71, SurfacePressure: 610,
 			Gas:            []hazewright.GasShare{{Species: "CO2", Mole: 1}},
 			AirTemperature: 210, Sunlight: 586.2, BondAlbedo: 0.25, Emissivity: 0.95, DustOpticalDepth: 0.4,
-			LapseLimit: 2.5e-3, WarmSeasonMaximum: 288, AtmosphereBaseline: true},
+			LapseLimit: 2.5e-3, WarmSeasonMaximum: 288},
 		Goal: hazewright.Goal{Kind: "warming", Warming: 25},
 		Designs: []hazewright.Design{
 			{Name: "Iron rods", Particles: []hazewright.Particle{rod(8e-6, 80e-9, "iron", 1)}, Supply: fixtureSupply("hematite")},
@@ -205,8 +205,16 @@ func fixture() *hazewright.Result {
 	iron.Losses = []hazewright.Loss{{Name: "agglomeration", Share: 0.86, LifetimeAlone: 0.18 * year}, {Name: "burial", Share: 0.11, LifetimeAlone: 1.5 * year},
 		{Name: "frost burial", Share: 0.03, LifetimeAlone: 33 * year}}
 	iron.Spectrum = spectrum([]float64{17e-6}, 2500)
-	iron.Warnings = []hazewright.Warning{{Where: "supply.release", Text: "12 points are far fewer than the 812 that 90 % survival needs"}}
-	iron.Populations = []hazewright.PopulationResult{{Name: "rod 8 um x 80 nm, iron", Share: 1, Material: "iron", Density: 7874, ParticleMass: 3.2e-16,
+	plume := hazewright.Warning{Where: "supply.release", Text: "12 points are far fewer than the 13317641 that 90 % survival needs"}
+	upkeep := hazewright.Warning{Where: "supply.delivery.flights_per_window", Text: "421 flights a window are needed"}
+	field := hazewright.Warning{Where: "fate", Text: "a field stands the rods up"}
+	asked := hazewright.Warning{Where: "fate.sticking", Text: "sticking is not given"}
+	iron.Warnings = []hazewright.Warning{field, plume, asked} // of all cases, and of the first
+	iron.Cases[0].Warnings = []hazewright.Warning{field, plume}
+	iron.Cases[1].Warnings = []hazewright.Warning{field, upkeep}
+	iron.Cases[0].Losses = iron.Losses
+	iron.Cases[1].Losses = []hazewright.Loss{{Name: "burial", Share: 0.9, LifetimeAlone: 13.8 * year}, {Name: "agglomeration", Share: 0.1, LifetimeAlone: 124 * year}}
+	iron.Populations = []hazewright.PopulationResult{{Name: "rod 8 um x 80 nm, iron", Share: 1, Material: "iron", Conducts: "yes", Combustible: "yes", Oxide: 3e-9, Density: 7874, ParticleMass: 3.2e-16,
 		KappaThermal: 1820, KappaThermalExt: 2090, KappaSolarExt: 510, KappaSolarAbs: 300, OpticsMethod: "antenna", OpticsError: 0.02,
 		FallSpeed: 3.1e-4, Lifetime: 0.158 * year}}
 
@@ -220,6 +228,11 @@ func fixture() *hazewright.Result {
 		{Name: "frost burial", Share: 0.12, LifetimeAlone: 33 * year}}
 	mix.Spectrum = spectrum([]float64{13e-6, 27e-6}, 3600)
 
+	mix.Populations = []hazewright.PopulationResult{
+		{Name: "rod 6 um x 100 nm, aluminium", Share: 0.4, Material: "aluminium", Conducts: "yes", Combustible: "yes", Density: 2700, ParticleMass: 1.3e-16, Lifetime: 9.31 * year},
+		{Name: "rod 13 um x 100 nm, aluminium", Share: 0.6, Material: "aluminium", Conducts: "yes", Combustible: "yes", Density: 2700, ParticleMass: 2.8e-16, Lifetime: 9.31 * year},
+	}
+
 	ice := fixtureDesign(s, 2, map[string]float64{"kappa_thermal": 48, "sublimation_time": 0.00014})
 	ice.Reached, ice.Cause = false, "sublimes"
 	for _, id := range []string{"warming", "warming_low_held", "burden", "burden_low_held", "inventory", "ground_store", "sunlight_loss", "forcing", "optical_depth_thermal",
@@ -228,6 +241,7 @@ func fixture() *hazewright.Result {
 		"number_density", "release_survival", "release_points_needed", "layer_field"} {
 		ice.Figures[id] = hazewright.FigureValue{Null: true, Why: "sublimes"}
 	}
+	ice.Populations = []hazewright.PopulationResult{{Name: "sphere of radius 12 um, water-ice", Share: 1, Material: "water-ice", Conducts: "no", Combustible: "no", Density: 917}}
 	ice.Limits = fixtureLimits(s, ice.Figures)
 	ice.Curve, ice.CurveLow = warmingCurve(9, 2e-3, 12), nil
 	ice.MaxWarming, ice.MaxBurden = ice.Curve[40].Warming, ice.Curve[40].Burden
@@ -242,6 +256,10 @@ func fixture() *hazewright.Result {
 			d.Outgoing = append(d.Outgoing, f*(1.15-0.5/(1+x*x/0.1)))
 		}
 	}
+	iron.Cases[0].Programme = iron.Programme
+	bySlow := iron
+	bySlow.Figures = slow
+	iron.Cases[1].Programme = programme(s, &bySlow)
 	r.Designs = []hazewright.DesignResult{iron, mix, ice}
 	r.Warnings = []hazewright.Warning{{Where: "uncertain", Text: "not used yet: this run has no samples"}}
 	r.Methods = []hazewright.Method{

@@ -6,6 +6,7 @@ import (
 	"strconv"
 	"strings"
 	"unicode"
+	"unicode/utf8"
 
 	"hazewright"
 )
@@ -107,25 +108,58 @@ func typographic(s string) string {
 	})
 }
 
-var longNumber = regexp.MustCompile(`\b\d{5,}\b`)
+var numberInText = regexp.MustCompile(`\d+(?:\.\d+)?(?:e[+-]?\d+)?`)
+
+// eachNumber replaces the numbers of a text that stand by themselves, as "12020" and
+// "x583" do and the digits of a name or a version do not.
+func eachNumber(s string, replace func(number string) string) string {
+	var b strings.Builder
+	last := 0
+	for _, at := range numberInText.FindAllStringIndex(s, -1) {
+		before, _ := utf8.DecodeLastRuneInString(strings.TrimSuffix(s[:at[0]], "x"))
+		after, _ := utf8.DecodeRuneInString(strings.TrimPrefix(s[at[1]:], "."))
+		if partOfName(before) || partOfName(after) {
+			continue
+		}
+		b.WriteString(s[last:at[0]])
+		b.WriteString(replace(s[at[0]:at[1]]))
+		last = at[1]
+	}
+	return b.String() + s[last:]
+}
+
+func partOfName(r rune) bool {
+	return unicode.IsLetter(r) || unicode.IsDigit(r) || r == '_' || r == '.' || r == '/'
+}
 
 // pretty writes an SI value in the unit given for the report: powers raised, and a
 // narrow space between thousands.
 func pretty(si float64, unit string) string { return prettyText(quantity(si, unit)) }
 
-// prettyText does so for a value that is written already.
+// prettyText does so for every number of a text.
 func prettyText(s string) string {
-	whole, fraction, point := strings.Cut(s, ".")
-	whole = longNumber.ReplaceAllStringFunc(whole, func(n string) string {
-		for i := len(n) - 3; i > 0; i -= 3 {
+	return typographic(eachNumber(s, func(n string) string {
+		whole := len(n)
+		if i := strings.IndexAny(n, ".e"); i >= 0 {
+			whole = i
+		}
+		for i := whole - 3; i > 0 && whole >= 5; i -= 3 {
 			n = n[:i] + "\u202f" + n[i:]
 		}
 		return n
+	}))
+}
+
+// uniform writes the large numbers of a text as figures are written: "13317641 flights"
+// becomes "1.332e7 flights", "1.66e+07 yr" becomes "1.66e7 yr".
+func uniform(s string) string {
+	return eachNumber(s, func(n string) string {
+		v, err := strconv.ParseFloat(n, 64)
+		if err != nil || v < 1e7 && !strings.Contains(n, "e") {
+			return n
+		}
+		return significant(v, digits)
 	})
-	if point {
-		whole += "." + fraction
-	}
-	return typographic(whole)
 }
 
 // clean makes a text from a study safe to show on one line: control characters and

@@ -41,15 +41,46 @@ type Gate struct {
 // people first.
 func GateTable() []GateDef { return append([]GateDef(nil), gateTable...) }
 
-// Gates holds every condition against a design. The thresholds are those named in each
-// condition's text; a figure without a value leaves the condition not known.
+// Gates holds every condition against a design, in all of its sticking cases: one that
+// trips in any has tripped, and the finding says in which. The thresholds are those named
+// in each condition's text; a figure without a value leaves the condition not known.
 func Gates(r *hazewright.Result, d *hazewright.DesignResult) []Gate {
+	cases := variantsOf(d)
 	gates := make([]Gate, 0, len(gateTable))
 	for _, def := range gateTable {
-		state, finding := def.trigger(r, d)
+		states, findings := make([]string, len(cases)), make([]string, len(cases))
+		for i, v := range cases {
+			states[i], findings[i] = def.trigger(r, v.result())
+		}
+		state, finding := joined(cases, states, findings)
 		gates = append(gates, Gate{def.ID, def.Title, state, finding, def.Text, def.NextStep, def.Source})
 	}
 	return gates
+}
+
+// joined makes one verdict of those of the cases: the gravest state, and each finding
+// with its case where they differ.
+func joined(cases []variant, states, findings []string) (state, finding string) {
+	state = NotTripped
+	same := true
+	for i := range cases {
+		if states[i] == Tripped || states[i] == NotKnown && state != Tripped {
+			state = states[i]
+		}
+		same = same && states[i] == states[0] && findings[i] == findings[0]
+	}
+	if same {
+		return state, findings[0]
+	}
+	var parts []string
+	for i, v := range cases {
+		text := v.condition() + ": " + findings[i]
+		if states[i] != state {
+			text = fmt.Sprintf("%s: %s (%s)", v.condition(), states[i], findings[i])
+		}
+		parts = append(parts, text)
+	}
+	return state, strings.Join(parts, "; ")
 }
 
 // largestCaution is the first condition that trips, by the order of the table.
@@ -93,8 +124,8 @@ var gateTable = []GateDef{
 		trigger:  nanoscaleDimension,
 	},
 	{
-		ID: "combustible-dust", Title: "Combustible metal dust", Source: "[NFPA484]",
-		Text: "Fine aluminium, magnesium, titanium, iron and other metals burn and can explode as dust in breathable air; " +
+		ID: "combustible-dust", Title: "Combustible dust", Source: "[NFPA484]",
+		Text: "Fine aluminium, magnesium, titanium, iron and other metals, and graphite, burn and can explode as dust in breathable air; " +
 			"aluminium, magnesium and titanium burn in carbon dioxide too, so the planet's own air does not make them inert.",
 		NextStep: "Dust hazard analysis by a qualified person before any plant layout; test this size, not a coarser one.",
 		trigger:  combustibleDust,
@@ -229,61 +260,52 @@ func nanoscaleDimension(_ *hazewright.Result, d *hazewright.DesignResult) (strin
 	return verdict(least < nanoscale), "smallest dimension " + nanometres(least)
 }
 
-// metals are the built-in materials that conduct as metals, with whether fine dust
-// of them counts as combustible.
-var metals = []struct {
-	name        string
-	combustible bool
-}{
-	{"iron", true}, {"aluminium", true}, {"titanium", true}, {"magnesium", true}, {"nickel", true}, {"tungsten", true}, {"copper", false},
-}
-
-// isMetal returns whether a built-in material is a metal, and whether its dust burns.
-// Variants such as "iron-drude" count as their metal.
-func isMetal(m hazewright.MaterialRef) (metal, combustible bool) {
-	for _, row := range metals {
-		if m.Name == row.name || strings.HasPrefix(m.Name, row.name+"-") {
-			return true, row.combustible
-		}
-	}
-	return false, false
-}
-
-// eachMaterial applies a test to the populations. A user's own material cannot be
-// tested by name, which leaves the condition not known unless another one trips it.
-func eachMaterial(d *hazewright.DesignResult, test func(hazewright.Particle) (bool, string), none string) (string, string) {
+// eachPopulation applies a test to the populations. Where the program does not know the
+// answer for a user's own material the condition is not known, unless another population
+// trips it.
+func eachPopulation(d *hazewright.DesignResult, test func(hazewright.Particle, hazewright.PopulationResult) (answer, finding string), none string) (string, string) {
 	state, finding := NotTripped, none
-	for _, p := range d.Design.Particles {
-		if p.Material.Table != "" {
-			state, finding = NotKnown, fmt.Sprintf("material from table %q: the program does not know what it is", clean(p.Material.Table))
-			continue
-		}
-		if tripped, text := test(p); tripped {
+	for i, p := range d.Populations {
+		switch answer, text := test(d.Design.Particles[i], p); answer {
+		case "yes":
 			return Tripped, text
+		case "unknown":
+			state, finding = NotKnown, fmt.Sprintf("material %s: the program does not know what it is", clean(p.Material))
 		}
 	}
 	return state, finding
 }
 
 func combustibleDust(_ *hazewright.Result, d *hazewright.DesignResult) (string, string) {
-	return eachMaterial(d, func(p hazewright.Particle) (bool, string) {
-		_, combustible := isMetal(p.Material)
-		return combustible, fmt.Sprintf("%s, %s thin", p.Material.Name, nanometres(thinnest(p)))
-	}, "no combustible metal")
+	return eachPopulation(d, func(q hazewright.Particle, p hazewright.PopulationResult) (string, string) {
+		return p.Combustible, fmt.Sprintf("%s, %s thin", clean(p.Material), nanometres(thinnest(q)))
+	}, "nothing whose dust burns")
 }
 
 func pyrophoricIron(_ *hazewright.Result, d *hazewright.DesignResult) (string, string) {
-	return eachMaterial(d, func(p hazewright.Particle) (bool, string) {
-		iron := p.Material.Name == "iron" || strings.HasPrefix(p.Material.Name, "iron-")
-		return iron && thinnest(p) < pyrophoric, fmt.Sprintf("iron %s thin, oxide skin %s", nanometres(thinnest(p)), nanometres(p.Oxide))
+	return eachPopulation(d, func(q hazewright.Particle, p hazewright.PopulationResult) (string, string) {
+		skin := "no oxide skin"
+		if p.Oxide > 0 {
+			skin = "oxide skin " + nanometres(p.Oxide)
+		}
+		iron := q.Material.Name == "iron" || strings.HasPrefix(q.Material.Name, "iron-")
+		switch {
+		case thinnest(q) >= pyrophoric:
+		case q.Material.Table != "":
+			return "unknown", ""
+		case iron:
+			return "yes", fmt.Sprintf("iron %s thin, %s", nanometres(thinnest(q)), skin)
+		}
+		return "no", ""
 	}, "no iron under 1 um")
 }
 
 func conductiveFibres(_ *hazewright.Result, d *hazewright.DesignResult) (string, string) {
-	return eachMaterial(d, func(p hazewright.Particle) (bool, string) {
-		metal, _ := isMetal(p.Material)
-		conducts := metal || p.Material.Name == "graphite"
-		return conducts && p.Shape == "rod", fmt.Sprintf("%s rods, %s long", p.Material.Name, microns(p.Length))
+	return eachPopulation(d, func(q hazewright.Particle, p hazewright.PopulationResult) (string, string) {
+		if q.Shape != "rod" {
+			return "no", ""
+		}
+		return p.Conducts, fmt.Sprintf("%s rods, %s long", clean(p.Material), microns(q.Length))
 	}, "no conducting rods")
 }
 

@@ -13,6 +13,7 @@ func gateOf(t *testing.T, id string, change func(r *hazewright.Result, d *hazewr
 	t.Helper()
 	r := fixture()
 	d := &r.Designs[0]
+	d.Cases = nil // one case is enough for a rule
 	change(r, d, &d.Design.Particles[0])
 	for _, g := range Gates(r, d) {
 		if g.ID == id {
@@ -74,21 +75,56 @@ func TestNanoscaleRule(t *testing.T) {
 
 func TestMaterialRules(t *testing.T) {
 	for _, c := range []struct {
-		gate, material, table string
-		want                  string
+		gate, material, table, answer string // answer: does it conduct, does its dust burn
+		want                          string
 	}{
-		{"combustible-dust", "iron", "", Tripped}, {"combustible-dust", "iron-drude", "", Tripped}, {"combustible-dust", "aluminium", "", Tripped},
-		{"combustible-dust", "titanium", "", Tripped}, {"combustible-dust", "halite", "", NotTripped}, {"combustible-dust", "hematite", "", NotTripped},
-		{"combustible-dust", "iron.csv", "iron.csv", NotKnown},
-		{"pyrophoric-iron", "iron", "", Tripped}, {"pyrophoric-iron", "aluminium", "", NotTripped}, {"pyrophoric-iron", "x.csv", "x.csv", NotKnown},
-		{"conductive-fibres", "graphite", "", Tripped}, {"conductive-fibres", "copper", "", Tripped}, {"conductive-fibres", "halite", "", NotTripped},
-		{"contamination", "iron", "", Tripped}, {"contamination", "water-ice", "", NotTripped},
+		{"combustible-dust", "iron", "", "yes", Tripped}, {"combustible-dust", "halite", "", "no", NotTripped},
+		{"combustible-dust", "iron.csv", "iron.csv", "unknown", NotKnown},
+		{"pyrophoric-iron", "iron", "", "yes", Tripped}, {"pyrophoric-iron", "iron-querry", "", "yes", Tripped},
+		{"pyrophoric-iron", "aluminium", "", "yes", NotTripped}, {"pyrophoric-iron", "x.csv", "x.csv", "unknown", NotKnown},
+		{"conductive-fibres", "graphite", "", "yes", Tripped}, {"conductive-fibres", "halite", "", "no", NotTripped},
+		{"conductive-fibres", "x.csv", "x.csv", "unknown", NotKnown},
+		{"contamination", "iron", "", "yes", Tripped}, {"contamination", "water-ice", "", "no", NotTripped},
 	} {
-		g := gateOf(t, c.gate, func(_ *hazewright.Result, _ *hazewright.DesignResult, p *hazewright.Particle) {
+		g := gateOf(t, c.gate, func(_ *hazewright.Result, d *hazewright.DesignResult, p *hazewright.Particle) {
 			p.Material = hazewright.MaterialRef{Name: c.material, Table: c.table}
+			d.Populations[0].Material, d.Populations[0].Conducts, d.Populations[0].Combustible = c.material, c.answer, c.answer
 		})
 		if g.State != c.want {
 			t.Errorf("%s of %s: %s (%s), want %s", c.gate, c.material, g.State, g.Finding, c.want)
+		}
+	}
+}
+
+// A skin that the study does not give is -1 there: the finding has what the engine took.
+func TestPyrophoricFindingNamesTheSkin(t *testing.T) {
+	for skin, want := range map[float64]string{3e-9: "iron 80 nm thin, oxide skin 3 nm", 0: "iron 80 nm thin, no oxide skin"} {
+		g := gateOf(t, "pyrophoric-iron", func(_ *hazewright.Result, d *hazewright.DesignResult, p *hazewright.Particle) {
+			p.Oxide, d.Populations[0].Oxide = -1, skin
+		})
+		if g.Finding != want {
+			t.Errorf("finding %q, want %q", g.Finding, want)
+		}
+	}
+}
+
+// A gate trips if it trips in any sticking case, and says in which: the half-loss time is
+// 0.12 yr if every touch sticks and 10.6 yr if few do, and from 1 yr on it trips.
+func TestGatesLookAtEveryCase(t *testing.T) {
+	r := fixture()
+	d := &r.Designs[0]
+	d.Cases[1].Figures["half_loss_time"] = hazewright.FigureValue{Value: 10.6 * year}
+	for _, g := range Gates(r, d) {
+		switch g.ID {
+		case "slow-to-reverse":
+			if g.State != Tripped || !strings.Contains(g.Finding, "at 1 % sticking: half of the warming lasts 10.6 yr") ||
+				!strings.Contains(g.Finding, "at 100 % sticking: "+NotTripped) {
+				t.Errorf("%s: %s", g.State, g.Finding)
+			}
+		case "respirable-fibre": // the same in both, and said once
+			if strings.Contains(g.Finding, "sticking") {
+				t.Errorf("%s", g.Finding)
+			}
 		}
 	}
 }

@@ -43,6 +43,9 @@ var mainIDs = []string{
 // caseIDs are the figures that depend on sticking and are shown for each case of it.
 var caseIDs = []string{"burden", "lifetime", "production_rate", "power", "landed_mass", "time_to_goal"}
 
+// answerCaseIDs are those of the first screen.
+var answerCaseIDs = []string{"lifetime", "production_rate", "power", "landed_mass"}
+
 // answerIDs are the figures of the first screen.
 var answerIDs = []string{"burden", "lifetime", "production_rate", "landed_mass", "time_to_goal"}
 

@@ -8,9 +8,11 @@ import (
 	"fmt"
 	"html/template"
 	"io"
+	"strconv"
 	"strings"
 
 	"hazewright"
+	"hazewright/logistics"
 )
 
 var (
@@ -93,16 +95,14 @@ type page struct {
 	Title, World, Goal, Scope, Deferral, HingeRule, EstimateNote string
 	Sections                                                     []sectionLink
 	Answers                                                      []answerView
-	Columns                                                      []string
-	Verdicts                                                     []string
-	ColumnCount                                                  int
+	Comparison                                                   []comparisonView
 	HasBenchmarks                                                bool
-	Groups                                                       []groupView
+	Definitions                                                  []hazewright.FigureDef
 	Populations                                                  []populationView
 	ChartSections                                                []chartSection
-	LimitRows                                                    []limitRow
-	GateRows                                                     []gateRow
-	Warnings                                                     []warning
+	Limits                                                       []limitTable
+	Gates                                                        []gateTableView
+	Warnings                                                     []Warning
 	Inputs                                                       []inputView
 	Methods                                                      []hazewright.Method
 	Words                                                        []Word
@@ -124,22 +124,36 @@ type figureView struct {
 }
 
 type answerView struct {
-	Name, Cause       string
-	Reached, Never    bool // Never: the programme does not get there
-	Limits, LimitTone string
-	Failed            []string
-	Key               []figureView
-	CaseShown         string
-	CaseNames         []string
-	Cases             []caseView
-	Hinge             string
-	Caution           *Gate
-	CautionMore       string
+	Name, Tone, Mark, Verdict string
+	Limits, LimitTone         string
+	Failed                    []string
+	Key                       []figureView
+	CaseShown                 string
+	CaseNames                 []caseName
+	Cases                     []caseView
+	Supply                    []string // what stands against a programme that reaches the goal
+	Hinge                     string
+	Caution                   *Gate
+	CautionMore               string
 }
+
+type caseName struct{ Name, Share string }
 
 type caseView struct {
 	Name  string
-	Cells []string
+	Cells []toned
+}
+
+// toned is a text with its tone: "good", "warn", "bad", "soft" or "".
+type toned struct{ Text, Tone string }
+
+// comparisonView is the table of figures for as many designs as a page has room for.
+type comparisonView struct {
+	First, Last bool // of several tables
+	Columns     []string
+	Verdicts    []toned
+	Groups      []groupView
+	Span        int // columns of the table
 }
 
 type groupView struct {
@@ -164,12 +178,23 @@ type populationView struct {
 	Optics       string
 }
 
+type limitTable struct {
+	Columns []string
+	Rows    []limitRow
+}
+
 type limitRow struct {
 	Title, Pos string
 	Cells      [][]limitView
 }
 
 type limitView struct{ Word, Tone, Text string }
+
+type gateTableView struct {
+	First   bool
+	Columns []string
+	Rows    []gateRow
+}
 
 type gateRow struct {
 	Title, Text, Source, NextStep string
@@ -185,13 +210,11 @@ func newPage(r *hazewright.Result, p Provenance) (*page, error) {
 	v := &page{
 		CSP: securityPolicy(), CSS: template.CSS(styleSheet), Echarts: template.JS(echartsScript), Boot: template.JS(bootScript),
 		Title: clean(s.Title), World: clean(s.World.Name), Goal: typographic(goalText(s.Goal)), Scope: Scope, Deferral: Deferral, HingeRule: hingeRule,
-		ColumnCount: len(r.Designs) + 3,
-		Words:       Words(), Version: clean(p.Version), Command: clean(p.Command), File: clean(s.File), SHA256: clean(s.SHA256), Licences: Licences(),
+		Definitions: hazewright.Figures(),
+		Words:       Words(), Version: clean(p.Version), Command: clean(p.Command), File: clean(baseName(s.File)), SHA256: clean(s.SHA256), Licences: Licences(),
 	}
 	for i := range r.Designs {
 		d := &r.Designs[i]
-		v.Columns = append(v.Columns, clean(d.Name))
-		v.Verdicts = append(v.Verdicts, goalWord(d))
 		v.Answers = append(v.Answers, answerOf(r, d))
 		v.Populations = append(v.Populations, populationsOf(d)...)
 		v.HasBenchmarks = v.HasBenchmarks || len(benchmarks(r, d)) > 0
@@ -202,16 +225,24 @@ func newPage(r *hazewright.Result, p Provenance) (*page, error) {
 		}
 		v.Methods = append(v.Methods, m)
 	}
-	v.Groups = groupsOf(r)
-	v.LimitRows = limitRows(r)
-	v.GateRows = gateRows(r)
-	for _, w := range warnings(r) {
-		w.Design, w.Where, w.Text = clean(w.Design), clean(w.Where), clean(w.Text)
+	for _, b := range blocks(r, figureColumns) {
+		v.Comparison = append(v.Comparison, comparisonOf(r, b))
+	}
+	if len(s.Limits) > 0 {
+		for _, b := range blocks(r, limitColumns) {
+			v.Limits = append(v.Limits, limitTable{namesOf(b.designs), limitRows(r, b.designs)})
+		}
+	}
+	for _, b := range blocks(r, gateColumns) {
+		v.Gates = append(v.Gates, gateTableView{b.first, namesOf(b.designs), gateRows(r, b.designs)})
+	}
+	for _, w := range Warnings(r) {
+		w.Design, w.Where, w.Text = clean(w.Design), clean(w.Where), prettyText(uniform(clean(w.Text)))
 		v.Warnings = append(v.Warnings, w)
 	}
 	for _, in := range s.Inputs() {
 		origin := in.Origin.Kind
-		if place := strings.TrimPrefix(in.Origin.Pos, s.File+":"); place != "" {
+		if place := strings.TrimPrefix(position(s, in.Origin.Pos), baseName(s.File)+":"); place != "" {
 			origin += ", " + place
 		}
 		v.Inputs = append(v.Inputs, inputView{clean(in.Path), clean(in.Text), clean(in.Title), clean(origin), clean(in.Source)})
@@ -266,6 +297,13 @@ func chartSections(r *hazewright.Result) ([]chartSection, error) {
 			}
 			number++
 			c.Number = number
+			for _, row := range c.Table.Rows {
+				for i, cell := range row {
+					if _, err := strconv.ParseFloat(cell, 64); err == nil { // a number and not a name
+						row[i] = prettyText(cell)
+					}
+				}
+			}
 			section.Charts = append(section.Charts, c)
 		}
 		if len(section.Charts) > 0 {
@@ -278,49 +316,58 @@ func chartSections(r *hazewright.Result) ([]chartSection, error) {
 // viewOf splits a figure's value into its text and its marks.
 func viewOf(def hazewright.FigureDef, v hazewright.FigureValue, text string) figureView {
 	out := figureView{Title: def.Title, Definition: def.Definition, Text: prettyText(text), Estimate: estimated(v)}
-	if !v.Null && !out.Estimate {
+	if !v.Null && v.Note != "estimate" {
 		out.Note = clean(v.Note)
 	}
 	return out
 }
 
+// marks go with the tone of a verdict, for those who do not see the colour.
+var marks = map[tone]string{good: "\u2713", warn: "!", bad: "\u2717", plain: ""}
+
+// class is the tone's class in the style sheet.
+func (t tone) class() string { return map[tone]string{good: "good", warn: "warn", bad: "bad"}[t] }
+
 func answerOf(r *hazewright.Result, d *hazewright.DesignResult) answerView {
+	cases := variantsOf(d)
+	word, tone := cases[0].goalWord()
 	a := answerView{
-		Name: clean(d.Name), Reached: d.Reached, Never: neverInTime(d.Figures), Cause: clean(d.Cause), Limits: "Limits: " + limitsWord(d.Limits) + ".",
-		CaseShown: stickingCase(d), Hinge: typographic(hinge(d)),
-	}
-	switch n := count(d.Limits); {
-	case n.failed > 0:
-		a.LimitTone = "bad"
-	case n.met > 0 && n.unknown == 0:
-		a.LimitTone = "good"
+		Name: clean(d.Name), Tone: tone.class(), Mark: marks[tone], Verdict: prettyText("Goal " + word),
+		Limits: "Limits: " + prettyText(limitsWord(d.Limits)) + ".", LimitTone: limitsTone(d.Limits).class(),
+		CaseShown: stickingCase(d), Hinge: prettyText(hinge(d)),
 	}
 	for _, l := range d.Limits {
 		if l.Known && !l.Met {
-			a.Failed = append(a.Failed, prettyText(limitTitle(l.Limit))+": "+limitWord(l))
+			a.Failed = append(a.Failed, prettyText(limitTitle(l.Limit)+": "+limitWord(l, d.Figures[l.Figure])))
 		}
 	}
 	for _, def := range defs(answerIDs) {
 		v := d.Figures[def.ID]
 		one := viewOf(def, v, figureText(def, v))
 		if v.Null && d.Reached {
-			one.Why = why(v)
+			one.Why = prettyText(why(v))
 		}
 		a.Key = append(a.Key, one)
 	}
-	if !d.Reached {
-		mark := estimated(hazewright.FigureValue{Note: d.Figures["warming"].Note})
-		a.Key = append(a.Key, figureView{Title: "Largest warming found", Definition: "top of the warming curve",
-			Text: pretty(d.MaxWarming, "K"), Estimate: mark || warmingEstimated(r)})
-	}
-	for _, c := range d.Cases {
-		a.CaseNames = append(a.CaseNames, clean(c.Name))
+	if !d.Reached && !d.NeverWarms {
+		title, text := warmest(d)
+		a.Key = append(a.Key, figureView{Title: title, Definition: "of the warming curve", Text: prettyText(text), Estimate: warmingEstimated(r)})
 	}
 	if len(d.Cases) > 0 {
-		a.Cases = casesOf(d)
+		a.Cases = casesOf(cases)
+	}
+	for _, v := range cases {
+		text := v.troubles()
+		if v.name != "" {
+			a.CaseNames = append(a.CaseNames, caseName{clean(v.name), percent(v.sticking)})
+			text = "At " + percent(v.sticking) + " sticking it reaches the goal, but: " + text
+		}
+		if _, tone := v.goalWord(); tone == warn && v.troubles() != "" {
+			a.Supply = append(a.Supply, prettyText(sentenceCase(text))+".")
+		}
 	}
 	if g, ok := largestCaution(r, d); ok {
-		g.Finding = typographic(g.Finding)
+		g.Finding = prettyText(g.Finding)
 		a.Caution = &g
 		n := 0
 		for _, g := range Gates(r, d) {
@@ -334,23 +381,82 @@ func answerOf(r *hazewright.Result, d *hazewright.DesignResult) answerView {
 }
 
 // casesOf returns the rows of the table of sticking cases, one column for each case.
-func casesOf(d *hazewright.DesignResult) []caseView {
+func casesOf(cases []variant) []caseView {
 	var out []caseView
-	for _, def := range defs(caseIDs) {
-		row := caseView{Name: def.Title}
-		for _, c := range d.Cases {
-			row.Cells = append(row.Cells, prettyText(figureText(def, c.Figures[def.ID])))
+	add := func(name string, cell func(v variant) toned) {
+		row := caseView{Name: name}
+		for _, v := range cases {
+			row.Cells = append(row.Cells, cell(v))
 		}
 		out = append(out, row)
 	}
-	if len(d.Limits) > 0 {
-		row := caseView{Name: "Limits met"}
-		for _, c := range d.Cases {
-			row.Cells = append(row.Cells, fmt.Sprintf("%d of %d", count(c.Limits).met, len(c.Limits)))
-		}
-		out = append(out, row)
+	add("Goal", func(v variant) toned {
+		word, tone := v.goalShort()
+		return toned{strings.TrimSpace(marks[tone] + " " + prettyText(word)), tone.class()}
+	})
+	if len(cases[0].limits) > 0 {
+		add("Limits met", func(v variant) toned {
+			return toned{fmt.Sprintf("%d of %d", count(v.limits).met, len(v.limits)), limitsTone(v.limits).class()}
+		})
+	}
+	for _, def := range defs(answerCaseIDs) {
+		add(def.Title, func(v variant) toned { return toned{prettyText(figureText(def, v.figures[def.ID])), ""} })
+	}
+	cell := func(c gridCell) toned { return toned{prettyText(c.text), c.tone.class()} }
+	supply := cases[0].Design.Supply
+	add(fmt.Sprintf("Flights a window (%d planned)", supply.Delivery.FlightsPerWindow), func(v variant) toned { return cell(v.upkeep()) })
+	if supply.Route == logistics.Local {
+		add(fmt.Sprintf("Landing the plant (lasts %s)", duration(supply.Plant.Life)), func(v variant) toned { return cell(v.building()) })
 	}
 	return out
+}
+
+// block is a run of the designs that one table of a page shows.
+type block struct {
+	first, last bool
+	designs     []*hazewright.DesignResult
+}
+
+// How many designs a table has room for on paper.
+const (
+	figureColumns = 6
+	limitColumns  = 6
+	gateColumns   = 4
+)
+
+// blocks parts the designs into as few runs of at most so many as it takes, of about the
+// same length.
+func blocks(r *hazewright.Result, most int) []block {
+	n := len(r.Designs)
+	count := (n + most - 1) / most
+	out := make([]block, count)
+	for i := range out {
+		out[i].first, out[i].last = i == 0, i == count-1
+		for k := i * n / count; k < (i+1)*n/count; k++ {
+			out[i].designs = append(out[i].designs, &r.Designs[k])
+		}
+	}
+	return out
+}
+
+func namesOf(designs []*hazewright.DesignResult) []string {
+	var out []string
+	for _, d := range designs {
+		out = append(out, clean(d.Name))
+	}
+	return out
+}
+
+func comparisonOf(r *hazewright.Result, b block) comparisonView {
+	v := comparisonView{First: b.first, Last: b.last, Columns: namesOf(b.designs), Groups: groupsOf(r, b.designs), Span: len(b.designs) + 2}
+	if b.last {
+		v.Span++
+	}
+	for _, d := range b.designs {
+		word, tone := goalWord(d)
+		v.Verdicts = append(v.Verdicts, toned{prettyText(word), tone.class()})
+	}
+	return v
 }
 
 // warmingEstimated reports whether the warming method is an estimate.
@@ -370,19 +476,18 @@ func sentenceCase(s string) string {
 	return strings.ToUpper(s[:1]) + s[1:]
 }
 
-func groupsOf(r *hazewright.Result) []groupView {
+func groupsOf(r *hazewright.Result, designs []*hazewright.DesignResult) []groupView {
 	var out []groupView
 	for _, g := range groups(nil) {
 		view := groupView{Title: g.title}
 		for _, def := range g.figures {
 			row := rowView{ID: def.ID, Title: def.Title, Definition: def.Definition, Unit: typographic(unitHead(def.Shown)), None: noProgramme(def.ID)}
-			for i := range r.Designs {
-				d := &r.Designs[i]
+			for _, d := range designs {
 				v := d.Figures[def.ID]
 				one := viewOf(def, v, figureCell(def, v))
 				c := cellView{Text: one.Text, Note: one.Note, Estimate: one.Estimate}
 				if v.Null && (d.Reached || v.Why != d.Cause) {
-					c.Why = why(v)
+					c.Why = prettyText(why(v))
 				}
 				for _, b := range benchmarks(r, d) {
 					if b.Figure == def.ID {
@@ -423,44 +528,22 @@ func populationsOf(d *hazewright.DesignResult) []populationView {
 		if p.OpticsError > 0 {
 			optics += ", within " + percent(max(p.OpticsError, 0.001))
 		}
-		out = append(out, populationView{clean(d.Name), clean(p.Name), []string{
-			percent(p.Share), typographic(significant(p.ParticleMass, 3)), significant(p.KappaThermal, digits), significant(p.KappaThermalExt, digits),
-			significant(p.KappaSolarExt, digits), significant(p.FallSpeed*1e3, 3), life}, optics})
+		out = append(out, populationView{clean(d.Name), typographic(clean(p.Name)), []string{
+			percent(p.Share), typographic(significant(p.ParticleMass, 3)), pretty(p.KappaThermal, "1"), pretty(p.KappaThermalExt, "1"),
+			pretty(p.KappaSolarExt, "1"), significant(p.FallSpeed*1e3, 3), life}, optics})
 	}
 	return out
 }
 
-func limitRows(r *hazewright.Result) []limitRow {
+func limitRows(r *hazewright.Result, designs []*hazewright.DesignResult) []limitRow {
 	var out []limitRow
 	for i, l := range r.Study.Limits {
-		row := limitRow{Title: prettyText(limitTitle(l)), Pos: clean(l.Pos)}
+		row := limitRow{Title: prettyText(limitTitle(l)), Pos: clean(position(r.Study, l.Pos))}
 		def, _ := hazewright.FigureByID(l.Figure)
-		view := func(limits []hazewright.LimitResult, figures map[string]hazewright.FigureValue, name string) limitView {
-			if i >= len(limits) {
-				return limitView{Word: "not known"}
-			}
-			v := limitView{Word: limitWord(limits[i]), Text: prettyText(figureText(def, figures[l.Figure])), Tone: "soft"}
-			if limits[i].Known {
-				v.Tone = "bad"
-				if limits[i].Met {
-					v.Tone = "good"
-				}
-			} else {
-				v.Text = why(figures[l.Figure])
-			}
-			if name != "" {
-				v.Text += " if " + clean(name)
-			}
-			return v
-		}
-		for k := range r.Designs {
-			d := &r.Designs[k]
+		for _, d := range designs {
 			var cell []limitView
-			if len(d.Cases) == 0 {
-				cell = append(cell, view(d.Limits, d.Figures, ""))
-			}
-			for _, c := range d.Cases {
-				cell = append(cell, view(c.Limits, c.Figures, c.Name))
+			for _, v := range variantsOf(d) {
+				cell = append(cell, limitViewOf(v, i, def))
 			}
 			row.Cells = append(row.Cells, cell)
 		}
@@ -469,18 +552,40 @@ func limitRows(r *hazewright.Result) []limitRow {
 	return out
 }
 
-func gateRows(r *hazewright.Result) []gateRow {
+// limitViewOf shows the i-th limit in one case.
+func limitViewOf(v variant, i int, def hazewright.FigureDef) limitView {
+	if i >= len(v.limits) {
+		return limitView{Word: "not known"}
+	}
+	value := v.figures[def.ID]
+	out := limitView{Word: prettyText(limitWord(v.limits[i], value)), Text: prettyText(figureText(def, value)), Tone: limitTone(v.limits[i]).class()}
+	if value.Null {
+		out.Text = prettyText(why(value))
+		if short := shortReason(why(value)); strings.HasSuffix(out.Word, short) { // it is said already
+			out.Text = strings.TrimPrefix(strings.TrimPrefix(why(value), short), ":")
+		}
+	}
+	if out.Tone == "" {
+		out.Tone = "soft"
+	}
+	if v.name != "" {
+		out.Text += ", if " + clean(v.name)
+	}
+	return out
+}
+
+func gateRows(r *hazewright.Result, designs []*hazewright.DesignResult) []gateRow {
 	var out []gateRow
 	for _, g := range gateTable {
 		out = append(out, gateRow{Title: g.Title, Text: typographic(g.Text), Source: g.Source, NextStep: g.NextStep})
 	}
-	for i := range r.Designs {
-		for k, g := range Gates(r, &r.Designs[i]) {
+	for _, d := range designs {
+		for k, g := range Gates(r, d) {
 			tone := "soft"
 			if g.State == Tripped {
 				tone = "bad"
 			}
-			out[k].Cells = append(out[k].Cells, gateView{sentenceCase(g.State), tone, typographic(g.Finding)})
+			out[k].Cells = append(out[k].Cells, gateView{sentenceCase(g.State), tone, prettyText(g.Finding)})
 		}
 	}
 	return out

@@ -10,7 +10,8 @@ import (
 )
 
 // JSON writes the result as one JSON object: the resolved study, and for every design
-// all figures, limits, losses, gates and warnings. Values are SI with their unit, in
+// all figures, limits, losses, gates and warnings, for each sticking case where the study
+// gives no sticking. Values are SI with their unit, in
 // the shortest form that reads back to the same number; a figure without a value is
 // {"value": null, "why": ...}. Keys may be added under the same schema_version, never
 // renamed or removed.
@@ -21,7 +22,7 @@ func JSON(w io.Writer, r *hazewright.Result, p Provenance) error {
 	doc := jsonDocument{
 		SchemaVersion: schemaVersion, Tool: tool, Version: p.Version, Command: p.Command, Scope: Scope,
 		Study: jsonStudy{
-			Title: r.Study.Title, SHA256: r.Study.SHA256, Resolved: r.Study.Resolved(), Tables: orEmpty(r.Study.Tables),
+			Title: r.Study.Title, File: baseName(r.Study.File), SHA256: r.Study.SHA256, Resolved: r.Study.Resolved(), Tables: orEmpty(r.Study.Tables),
 		},
 		World: worldJSON(r), Goal: goalJSON(r.Study.Goal),
 		Designs:  []jsonDesign{},
@@ -65,6 +66,7 @@ type jsonDocument struct {
 
 type jsonStudy struct {
 	Title    string                 `json:"title"`
+	File     string                 `json:"file"` // its name, without the folder
 	SHA256   string                 `json:"sha256"`
 	Resolved any                    `json:"resolved"`
 	Tables   []hazewright.TableFile `json:"tables"`
@@ -121,34 +123,45 @@ func goalJSON(g hazewright.Goal) jsonGoal {
 }
 
 type jsonDesign struct {
-	Name         string               `json:"name"`
-	Reached      bool                 `json:"reached"`
-	Cause        string               `json:"cause"`
-	Figures      figuresJSON          `json:"figures"`
-	Limits       []jsonLimit          `json:"limits"`
-	Losses       []hazewright.Loss    `json:"losses"`
-	Gates        []Gate               `json:"gates"`
-	Warnings     []hazewright.Warning `json:"warnings"`
-	Hinge        string               `json:"hinge"`
-	StickingCase string               `json:"sticking_case,omitempty"`
-	Cases        []jsonCase           `json:"cases"`
-	Benchmarks   []jsonBenchmark      `json:"benchmarks"`
-	Populations  []jsonPopulation     `json:"populations"`
-	Curve        []jsonCurvePoint     `json:"warming_curve"`
-	CurveLow     []jsonCurvePoint     `json:"warming_curve_low_held"`
+	Name         string            `json:"name"`
+	Reached      bool              `json:"reached"`
+	Cause        string            `json:"cause"`
+	Verdict      string            `json:"verdict"` // reached, when, and what stands against it
+	NeverWarms   bool              `json:"never_warms"`
+	LayerShare   float64           `json:"layer_share"` // of a fixed layer; 0 without one
+	Figures      figuresJSON       `json:"figures"`
+	Limits       []jsonLimit       `json:"limits"`
+	Losses       []hazewright.Loss `json:"losses"`
+	Gates        []Gate            `json:"gates"`
+	Warnings     []jsonWarning     `json:"warnings"` // of all cases
+	Hinge        string            `json:"hinge"`
+	StickingCase string            `json:"sticking_case,omitempty"`
+	Cases        []jsonCase        `json:"cases"`
+	Benchmarks   []jsonBenchmark   `json:"benchmarks"`
+	Populations  []jsonPopulation  `json:"populations"`
+	Curve        []jsonCurvePoint  `json:"warming_curve"`
+	CurveLow     []jsonCurvePoint  `json:"warming_curve_low_held"`
 }
 
 func designJSON(r *hazewright.Result, d *hazewright.DesignResult) jsonDesign {
 	out := jsonDesign{
-		Name: d.Name, Reached: d.Reached, Cause: d.Cause,
+		Name: d.Name, Reached: d.Reached, Cause: d.Cause, NeverWarms: d.NeverWarms, LayerShare: d.LayerShare,
 		Figures: d.Figures, Limits: limitsJSON(d.Limits), Losses: orEmpty(d.Losses), Gates: Gates(r, d),
-		Warnings: orEmpty(d.Warnings), Hinge: hinge(d), StickingCase: d.StickingCase,
+		Warnings: []jsonWarning{}, Hinge: hinge(d), StickingCase: d.StickingCase,
 		Cases: []jsonCase{}, Benchmarks: []jsonBenchmark{}, Populations: []jsonPopulation{},
 		Curve: curveJSON(d.Curve), CurveLow: curveJSON(d.CurveLow),
 	}
-	for _, c := range d.Cases {
-		out.Cases = append(out.Cases, jsonCase{c.Name, c.Sticking, c.Figures, limitsJSON(c.Limits)})
+	for _, w := range warningsOf(d) {
+		out.Warnings = append(out.Warnings, jsonWarning{w.Warning, w.Case})
 	}
+	if len(d.Cases) > 0 {
+		for i, v := range variantsOf(d) {
+			word, _ := v.goalWord()
+			out.Cases = append(out.Cases, jsonCase{v.name, v.sticking, v.reached, word, v.figures, limitsJSON(v.limits),
+				orEmpty(v.losses), orEmpty(d.Cases[i].Warnings)})
+		}
+	}
+	out.Verdict, _ = goalWord(d)
 	for _, b := range benchmarks(r, d) {
 		def, _ := hazewright.FigureByID(b.Figure)
 		row := jsonBenchmark{Figure: b.Figure, Value: b.Value, Unit: def.Unit, Source: b.Source}
@@ -162,7 +175,7 @@ func designJSON(r *hazewright.Result, d *hazewright.DesignResult) jsonDesign {
 			p.Name, p.Share, p.Material, quantityJSON{p.Density, "kg/m3"}, quantityJSON{p.ParticleMass, "kg"},
 			quantityJSON{p.KappaThermal, "m2/kg"}, quantityJSON{p.KappaThermalExt, "m2/kg"}, quantityJSON{p.KappaSolarExt, "m2/kg"},
 			quantityJSON{p.KappaSolarAbs, "m2/kg"}, p.OpticsMethod, p.OpticsError, quantityJSON{p.FallSpeed, "m/s"},
-			quantityJSON{p.Lifetime, "s"}, p.Given,
+			quantityJSON{p.Lifetime, "s"}, p.Given, quantityJSON{p.Oxide, "m"}, p.Conducts, p.Combustible,
 		})
 	}
 	return out
@@ -233,11 +246,22 @@ func limitsJSON(limits []hazewright.LimitResult) []jsonLimit {
 	return out
 }
 
+// jsonWarning is a warning of a design; Case says in which sticking case it holds, ""
+// for all.
+type jsonWarning struct {
+	hazewright.Warning
+	Case string `json:"case,omitempty"`
+}
+
 type jsonCase struct {
-	Name     string      `json:"name"`
-	Sticking float64     `json:"sticking"`
-	Figures  figuresJSON `json:"figures"`
-	Limits   []jsonLimit `json:"limits"`
+	Name     string               `json:"name"`
+	Sticking float64              `json:"sticking"`
+	Reached  bool                 `json:"reached"`
+	Verdict  string               `json:"verdict"`
+	Figures  figuresJSON          `json:"figures"`
+	Limits   []jsonLimit          `json:"limits"`
+	Losses   []hazewright.Loss    `json:"losses"`
+	Warnings []hazewright.Warning `json:"warnings"` // of this case alone or of others too
 }
 
 type jsonBenchmark struct {
@@ -263,6 +287,9 @@ type jsonPopulation struct {
 	FallSpeed       quantityJSON `json:"fall_speed"`
 	Lifetime        quantityJSON `json:"lifetime"`
 	Given           bool         `json:"lifetime_given"`
+	Oxide           quantityJSON `json:"oxide"`
+	Conducts        string       `json:"conducts"`    // "yes", "no" or "unknown"
+	Combustible     string       `json:"combustible"` // the same
 }
 
 type jsonCurvePoint struct {

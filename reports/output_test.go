@@ -177,7 +177,7 @@ func TestCSVFiles(t *testing.T) {
 			t.Errorf("%s has no rows", f.Name)
 		}
 	}
-	want := []string{"designs.csv", "figures.csv", "limits.csv", "losses.csv", "gates.csv", "warming_curve.csv", "spectrum.csv", "profile.csv", "schedule.csv", "inputs.csv"}
+	want := []string{"designs.csv", "figures.csv", "limits.csv", "losses.csv", "gates.csv", "warming_curve.csv", "spectrum.csv", "profile.csv", "schedule.csv", "warnings.csv", "inputs.csv"}
 	if diff := cmp.Diff(want, names); diff != "" {
 		t.Errorf("files (-want +got):\n%s", diff)
 	}
@@ -320,11 +320,29 @@ func TestCompareTable(t *testing.T) {
 		t.Fatal(err)
 	}
 	text := out.String()
-	if !strings.Contains(text, "1. Iron rods (Second study)") || !strings.Contains(text, "-. no programme") ||
-		!strings.Contains(text, "landed_mass FAILED") || !strings.Contains(text, "less is better") {
-		t.Errorf("comparison:\n%s", text)
+	for _, want := range []string{"1. Iron rods", "Second study", "no programme", "Landed mass at most 60 kt", "less is better",
+		"Where sticking is not given: if one touch in a hundred sticks (1 %)", "FAILED: Landed"} {
+		if !strings.Contains(text, want) {
+			t.Errorf("the comparison lacks %q:\n%s", want, text)
+		}
 	}
-	if strings.Index(text, "5. Ice veil") < strings.Index(text, "4. ") {
+	if strings.Contains(text, "goals differ") {
+		t.Error("the goals are the same")
+	}
+	for _, line := range strings.Split(text, "\n") {
+		if columnsOf(line) > compareWidth {
+			t.Errorf("line of %d columns %q", columnsOf(line), line)
+		}
+	}
+	b.Study.Goal.Warming = 30
+	out.Reset()
+	if err := CompareTable(&out, []*hazewright.Result{a, b}, "production_rate", Style{}); err != nil {
+		t.Fatal(err)
+	}
+	if !strings.Contains(out.String(), "goals differ (warming of 25 K; warming of 30 K)") {
+		t.Errorf("no word on the goals:\n%s", out.String())
+	}
+	if at := strings.Index(text, "5. Ice veil"); at < 0 || at < strings.Index(text, "4. ") {
 		t.Errorf("designs without a value must come last:\n%s", text)
 	}
 	err := CompareTable(io.Discard, []*hazewright.Result{a}, "prodution", Style{})

@@ -17,6 +17,7 @@ type tone string
 const (
 	plain  tone = ""
 	good   tone = "32" // green
+	warn   tone = "33" // yellow
 	bad    tone = "31" // red
 	strong tone = "1"  // bold
 )

@@ -83,20 +83,20 @@ func (t *tableBuilder) value(d *hazewright.DesignResult, def hazewright.FigureDe
 	if v.Null {
 		note = ""
 		if d.Reached && v.Why != "" {
-			note = strings.ToLower(def.Title) + ": " + why(v)
+			note = why(v)
 		}
 	}
-	switch {
-	case estimated(v):
+	if estimated(v) {
 		t.estimates = true
 		c.mark = "*"
-	case note != "":
+	}
+	if note != "" && note != "estimate" {
 		i := slices.Index(t.notes, note)
 		if i < 0 {
 			i = len(t.notes)
 			t.notes = append(t.notes, note)
 		}
-		c.mark = " " + noteMark(i)
+		c.mark += " " + noteMark(i)
 	}
 	return c
 }
@@ -113,18 +113,9 @@ func (t *tableBuilder) verdicts() {
 	for _, d := range t.r.Designs {
 		t.grid.columns = append(t.grid.columns, clean(d.Name))
 	}
-	t.row("Goal", "", func(d *hazewright.DesignResult) gridCell {
-		return goalCell(d)
-	})
+	t.row("Goal", "", func(d *hazewright.DesignResult) gridCell { return goalCell(variantsOf(d)[0]) })
 	t.row("Limits", "", func(d *hazewright.DesignResult) gridCell {
-		c := gridCell{text: limitsWord(d.Limits)}
-		switch n := count(d.Limits); {
-		case n.failed > 0:
-			c.tone = bad
-		case n.met > 0 && n.unknown == 0:
-			c.tone = good
-		}
-		return c
+		return gridCell{text: limitsWord(d.Limits), tone: limitsTone(d.Limits)}
 	})
 	t.row("Cautions and gates", "", func(d *hazewright.DesignResult) gridCell {
 		n := 0
@@ -136,8 +127,18 @@ func (t *tableBuilder) verdicts() {
 		return gridCell{text: fmt.Sprintf("%d of %d tripped", n, len(gateTable))}
 	})
 	if slices.ContainsFunc(t.r.Designs, func(d hazewright.DesignResult) bool { return !d.Reached }) {
-		t.row("Largest warming found", "K", func(d *hazewright.DesignResult) gridCell {
+		t.row("Largest warming", "K", func(d *hazewright.DesignResult) gridCell {
+			switch {
+			case d.Reached:
+				return gridCell{text: "-"}
+			case d.NeverWarms:
+				_, text := warmest(d)
+				return gridCell{text: text}
+			}
 			c := gridCell{text: bare(d.MaxWarming, "K")}
+			if d.Goal.Burden > 0 {
+				c.text = bare(d.Goal.Warming, "K")
+			}
 			if warmingEstimated(t.r) {
 				t.estimates = true
 				c.mark = "*"
@@ -159,12 +160,9 @@ func (t *tableBuilder) figures() {
 }
 
 // goalCell is goalWord with its tone.
-func goalCell(d *hazewright.DesignResult) gridCell {
-	c := gridCell{text: goalWord(d), tone: bad}
-	if d.Reached && !neverInTime(d.Figures) {
-		c.tone = good
-	}
-	return c
+func goalCell(v variant) gridCell {
+	text, tone := v.goalWord()
+	return gridCell{text: text, tone: tone}
 }
 
 // unitHead is the unit in a head column, nothing for a plain number.
@@ -186,19 +184,13 @@ func (t *tableBuilder) limits() {
 			if i >= len(d.Limits) {
 				return gridCell{text: "not known"}
 			}
-			return limitCell(d.Limits[i])
+			return limitCell(d.Limits[i], d.Figures)
 		})
 	}
 }
 
-func limitCell(l hazewright.LimitResult) gridCell {
-	c := gridCell{text: limitWord(l)}
-	if l.Known && l.Met {
-		c.tone = good
-	} else if l.Known {
-		c.tone = bad
-	}
-	return c
+func limitCell(l hazewright.LimitResult, figures map[string]hazewright.FigureValue) gridCell {
+	return gridCell{text: limitWord(l, figures[l.Figure]), tone: limitTone(l)}
 }
 
 // cases adds the sticking cases, worst first.
@@ -209,21 +201,44 @@ func (t *tableBuilder) cases() {
 	}
 	for i := range most {
 		t.headingRow("Sticking not given: " + t.caseName(i))
-		for _, def := range defs(caseIDs) {
-			t.row("  "+def.Title, unitHead(def.Shown), func(d *hazewright.DesignResult) gridCell {
+		of := func(cell func(v variant) gridCell) func(d *hazewright.DesignResult) gridCell {
+			return func(d *hazewright.DesignResult) gridCell {
 				if i >= len(d.Cases) {
 					return gridCell{text: "as above"}
 				}
-				return t.value(d, def, d.Cases[i].Figures[def.ID])
-			})
-		}
-		t.row("  Limits", "", func(d *hazewright.DesignResult) gridCell {
-			if i >= len(d.Cases) {
-				return gridCell{text: "-"}
+				return cell(variantsOf(d)[i])
 			}
-			return gridCell{text: limitsWord(d.Cases[i].Limits)}
-		})
+		}
+		t.row("  Goal", "", of(goalCell))
+		for _, def := range defs(caseIDs) {
+			t.row("  "+def.Title, unitHead(def.Shown), of(func(v variant) gridCell {
+				return t.value(v.result(), def, v.figures[def.ID])
+			}))
+		}
+		t.row("  Flights a window to hold it", "", of(upkeepCell))
+		t.row("  Landing the plant", "", of(buildCell))
+		t.row("  Limits", "", of(func(v variant) gridCell {
+			return gridCell{text: limitsWord(v.limits), tone: limitsTone(v.limits)}
+		}))
 	}
+}
+
+// upkeepCell holds the flights that a case needs against those planned.
+func upkeepCell(v variant) gridCell {
+	c := v.upkeep()
+	if c.tone == warn {
+		c.text += fmt.Sprintf(", %d planned", v.Design.Supply.Delivery.FlightsPerWindow)
+	}
+	return c
+}
+
+// buildCell holds the time that landing the plant takes against the plant's life.
+func buildCell(v variant) gridCell {
+	c := v.building()
+	if c.tone == warn {
+		c.text += ", it lasts " + duration(v.Design.Supply.Plant.Life)
+	}
+	return c
 }
 
 func (t *tableBuilder) caseName(i int) string {
@@ -254,15 +269,11 @@ func (t *tableBuilder) footer(out *bufio.Writer, style Style) {
 		paragraph(out, style, "  ", clean(t.r.Designs[i].Name)+": "+hinge(&t.r.Designs[i]))
 	}
 	paragraph(out, style, "  ", hingeRule)
-	if list := warnings(t.r); len(list) > 0 {
+	if list := Warnings(t.r); len(list) > 0 {
 		out.WriteByte('\n')
 		writeLine(out, style.paint("Warnings", strong))
 		for i, w := range list {
-			where := clean(w.Where)
-			if w.Design != "" {
-				where = clean(w.Design) + ": " + where
-			}
-			paragraph(out, style, fmt.Sprintf("%3d. ", i+1), where+": "+clean(w.Text))
+			paragraph(out, style, fmt.Sprintf("%3d. ", i+1), w.String())
 		}
 	}
 	out.WriteByte('\n')

@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"context"
 	"path/filepath"
+	"slices"
 
 	"github.com/spf13/cobra"
 
@@ -43,7 +44,7 @@ func addSetFlag(cmd *cobra.Command, sets *[]string) {
 }
 
 func (a *app) runAssess(ctx context.Context, path string, sets []string) error {
-	plan, err := a.plan([]string{path})
+	plan, err := a.plan([]input{{"study", path}})
 	if err != nil {
 		return err
 	}
@@ -51,12 +52,16 @@ func (a *app) runAssess(ctx context.Context, path string, sets []string) error {
 	if err != nil {
 		return err
 	}
+	inputs := inputsOf(path, study)
+	if err := distinct(inputs, plan.targets()...); err != nil {
+		return err
+	}
 	results, err := a.assess(ctx, []*hazewright.Study{study})
 	if err != nil {
 		return err
 	}
 	result := results[0]
-	from := reports.Provenance{Version: version, Command: reproducing(path, sets)}
+	from := reports.Provenance{Version: version, Command: reproducing("assess", []string{path}, sets)}
 
 	// Everything is prepared in memory before anything is written.
 	var out prepared
@@ -95,6 +100,7 @@ func (a *app) runAssess(ctx context.Context, path string, sets []string) error {
 		}
 		out.stdout = b.Bytes()
 	}
+	out.inputs = inputs
 	if err := a.deliver(ctx, out); err != nil {
 		return err
 	}
@@ -113,29 +119,30 @@ type plan struct{ report, json, csv target }
 // usesStdout says whether standard output is taken, so that no table goes there.
 func (p plan) usesStdout() bool { return p.report.toStdout() || p.json.toStdout() }
 
+// targets returns the targets that are wanted.
+func (p plan) targets() []target {
+	return slices.DeleteFunc([]target{p.report, p.json, p.csv}, func(t target) bool { return t.path == "" })
+}
+
 // plan checks the targets that the settings name, before the work starts. inputs are
 // the files that must not be overwritten.
-func (a *app) plan(inputs []string) (p plan, err error) {
-	var all []target
+func (a *app) plan(inputs []input) (p plan, err error) {
 	if a.settings.Report != "" {
 		if p.report, err = planFile("--report", a.settings.Report); err != nil {
 			return p, err
 		}
-		all = append(all, p.report)
 	}
 	if a.settings.JSON != "" {
 		if p.json, err = planFile("--json", a.settings.JSON); err != nil {
 			return p, err
 		}
-		all = append(all, p.json)
 	}
 	if a.settings.CSV != "" {
 		if p.csv, err = planFolder("--csv", a.settings.CSV); err != nil {
 			return p, err
 		}
-		all = append(all, p.csv)
 	}
-	return p, distinct(inputs, all...)
+	return p, distinct(inputs, p.targets()...)
 }
 
 // planInside checks that a file can be written under a name in the folder of a target,
@@ -151,6 +158,7 @@ func planInside(folder target, name string) (target, error) {
 
 // prepared is everything a run will write.
 type prepared struct {
+	inputs  []input // that must not be overwritten
 	folders []string
 	files   []file
 	stdout  []byte
@@ -172,7 +180,7 @@ func (a *app) deliver(ctx context.Context, out prepared) error {
 	for i, f := range out.files {
 		targets[i] = f.target
 	}
-	if err := distinct(nil, targets...); err != nil {
+	if err := distinct(out.inputs, targets...); err != nil {
 		return err // such as --json with the name of a file of --csv
 	}
 	if err := commit(ctx, out.folders, out.files); err != nil {

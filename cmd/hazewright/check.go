@@ -17,15 +17,19 @@ func (a *app) checkCommand() *cobra.Command {
 	cmd := &cobra.Command{
 		Use:   "check STUDY",
 		Short: "Check a study and say what it holds, without assessing it",
-		Long: `Reads a study and the tables it names, and lists every mistake with its place; ends
-with exit code 2 if there is one. Otherwise prints what the study holds and the scope of
+		Long: `Reads a study and the tables it names, holds world and particles against what the
+stages are valid for, and lists every mistake with its place; ends with exit code 2 if
+there is one. Otherwise prints what the study holds and the scope of
 what can be assessed.`,
 		Example: `  hazewright check thaw/study.yaml
   hazewright check thaw/study.yaml --inputs             every value it rests on, defaults too`,
 		Args: exactlyOne("a study file"),
-		RunE: func(_ *cobra.Command, args []string) error {
+		RunE: func(cmd *cobra.Command, args []string) error {
 			study, err := a.loadStudy(args[0], sets)
 			if err != nil {
+				return err
+			}
+			if err := hazewright.NewEngine(hazewright.Options{Workers: a.settings.Workers}).Check(cmd.Context(), study); err != nil {
 				return err
 			}
 			if err := a.printColumns(summary(study)); err != nil {
@@ -36,7 +40,9 @@ what can be assessed.`,
 					return err
 				}
 			}
-			a.warn("", "", study.Warnings)
+			for _, w := range study.Warnings {
+				a.note("warning: %s: %s", w.Where, w.Text)
+			}
 			return a.strictly(len(study.Warnings))
 		},
 	}

@@ -49,7 +49,11 @@ func (a *app) runCompare(ctx context.Context, paths, sets []string, by string) e
 		return unknownFigure(by)
 	}
 	a.settings.Report, a.settings.CSV = "", "" // compare writes neither
-	plan, err := a.plan(paths)
+	var inputs []input
+	for _, path := range paths {
+		inputs = append(inputs, input{"study", path})
+	}
+	plan, err := a.plan(inputs)
 	if err != nil {
 		return err
 	}
@@ -57,11 +61,17 @@ func (a *app) runCompare(ctx context.Context, paths, sets []string, by string) e
 	if err != nil {
 		return err
 	}
+	for i, s := range studies {
+		inputs = append(inputs, inputsOf(paths[i], s)...)
+	}
+	if err := distinct(inputs, plan.targets()...); err != nil {
+		return err
+	}
 	results, err := a.assess(ctx, studies)
 	if err != nil {
 		return err
 	}
-	var out prepared
+	out := prepared{inputs: inputs}
 	if plan.json.path != "" {
 		data, err := documents(results, paths, sets)
 		if err != nil {
@@ -79,7 +89,11 @@ func (a *app) runCompare(ctx context.Context, paths, sets []string, by string) e
 	if err := a.deliver(ctx, out); err != nil {
 		return err
 	}
-	a.warnAbout(results)
+	for i, r := range results {
+		if n := len(reports.Warnings(r)); n > 0 {
+			a.note("warning: %s in %s; `%s` lists them", counted(n, "warning"), paths[i], command("assess", paths[i:i+1], sets))
+		}
+	}
 	return a.strictly(warnings(results))
 }
 
@@ -107,12 +121,12 @@ func (a *app) loadStudies(paths, sets []string) ([]*hazewright.Study, error) {
 }
 
 // documents returns the JSON list of the results' own documents, each as `assess
-// --json` writes it.
+// --json` writes it but for its command.
 func documents(results []*hazewright.Result, paths, sets []string) ([]byte, error) {
 	list := make([]json.RawMessage, len(results))
+	from := reports.Provenance{Version: version, Command: reproducing("compare", paths, sets)}
 	for i, r := range results {
 		var b bytes.Buffer
-		from := reports.Provenance{Version: version, Command: reproducing(paths[i], sets)}
 		if err := reports.JSON(&b, r, from); err != nil {
 			return nil, err
 		}

@@ -23,6 +23,9 @@ changed from there. DIR is made if missing; a study that is there is never overw
   hazewright new .`,
 		Args: exactlyOne("a folder"),
 		RunE: func(_ *cobra.Command, args []string) error {
+			if args[0] == "" {
+				return badUsage("the folder has no name").withHint("`hazewright new .` writes into this one")
+			}
 			path := filepath.Join(args[0], "study.yaml")
 			if err := writeStarter(path); err != nil {
 				return err
@@ -37,6 +40,9 @@ changed from there. DIR is made if missing; a study that is there is never overw
 // writeStarter writes the starter study to path unless there is something already.
 func writeStarter(path string) error {
 	dir := filepath.Dir(path)
+	if info, err := os.Stat(dir); err == nil && !info.IsDir() || isNotDir(err) {
+		return badUsage("%s is a file, not a folder", dir).withHint("give a folder; the study in it is named study.yaml")
+	}
 	if err := os.MkdirAll(dir, 0o777); err != nil {
 		return badUsage("%v", err)
 	}

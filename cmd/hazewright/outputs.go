@@ -9,6 +9,8 @@ import (
 	"os"
 	"path/filepath"
 	"syscall"
+
+	"hazewright"
 )
 
 // target is one place that results go to, checked before the work starts.
@@ -97,9 +99,21 @@ func parentExists(flag, path string) error {
 // isNotDir says whether err comes from a path that runs through a file.
 func isNotDir(err error) bool { return errors.Is(err, syscall.ENOTDIR) }
 
+// input is a file that a run reads.
+type input struct{ what, path string } // "study" or "optical table"
+
+// inputsOf returns the files that a study was read from.
+func inputsOf(path string, s *hazewright.Study) []input {
+	list := []input{{"study", path}}
+	for _, t := range s.Tables {
+		list = append(list, input{"optical table", filepath.Join(filepath.Dir(path), filepath.FromSlash(t.File))})
+	}
+	return list
+}
+
 // distinct returns an error if two targets, or a target and one of the input files,
 // are the same.
-func distinct(inputs []string, targets ...target) error {
+func distinct(inputs []input, targets ...target) error {
 	stdout := ""
 	for i, t := range targets {
 		if t.toStdout() {
@@ -114,9 +128,9 @@ func distinct(inputs []string, targets ...target) error {
 				return badUsage("%s and %s name the same file, %s", other.flag, t.flag, t.path)
 			}
 		}
-		for _, input := range inputs {
-			if same(t.final, input) {
-				return badUsage("%s would overwrite the study %s", t.flag, input)
+		for _, in := range inputs {
+			if same(t.final, in.path) {
+				return badUsage("%s would overwrite the %s %s", t.flag, in.what, in.path)
 			}
 		}
 	}

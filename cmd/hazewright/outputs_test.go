@@ -191,6 +191,7 @@ func TestTargetsMustDiffer(t *testing.T) {
 		{"x", filepath.Join(dir, "x"), "name the same file"},
 		{"study.yaml", "y", "--report would overwrite the study study.yaml"},
 		{"y", "alias.yaml", "--json would overwrite the study study.yaml"},
+		{"gold.csv", "y", "--report would overwrite the optical table gold.csv"},
 	} {
 		a, err := planFile("--report", c.a)
 		if err != nil {
@@ -200,7 +201,7 @@ func TestTargetsMustDiffer(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		err = distinct([]string{"study.yaml"}, a, b)
+		err = distinct([]input{{"study", "study.yaml"}, {"optical table", "gold.csv"}}, a, b)
 		if (err == nil) != (c.want == "") || err != nil && !strings.Contains(err.Error(), c.want) {
 			t.Errorf("%s and %s: got %v, want %q", c.a, c.b, err, c.want)
 		}

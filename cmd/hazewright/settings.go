@@ -2,6 +2,7 @@ package main
 
 import (
 	"bytes"
+	"errors"
 	"fmt"
 	"os"
 	"regexp"
@@ -91,6 +92,9 @@ func (f *flagValue) String() string { return f.text }
 func (f *flagValue) Type() string   { return f.kind }
 func (f *flagValue) Set(text string) error {
 	f.text = text
+	if text == "" {
+		return errors.New("must not be empty")
+	}
 	return f.check(text)
 }
 

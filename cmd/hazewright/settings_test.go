@@ -47,7 +47,7 @@ func TestEverySettingInEveryLayer(t *testing.T) {
 		{"color", "never", "always", "auto", settings{Color: "never"}, settings{Color: "always"}, settings{Color: "auto"}},
 		{"quiet", "true", "false", "true", settings{Quiet: true}, settings{}, settings{Quiet: true}},
 		{"strict", "true", "false", "true", settings{Strict: true}, settings{}, settings{Strict: true}},
-		{"report", "a.html", "b.html", "", settings{Report: "a.html"}, settings{Report: "b.html"}, settings{}},
+		{"report", "a.html", "b.html", "c.html", settings{Report: "a.html"}, settings{Report: "b.html"}, settings{Report: "c.html"}},
 		{"json", "a.json", "b.json", "-", settings{JSON: "a.json"}, settings{JSON: "b.json"}, settings{JSON: "-"}},
 		{"csv", "a", "b", "c", settings{CSV: "a"}, settings{CSV: "b"}, settings{CSV: "c"}},
 	}

@@ -7,9 +7,11 @@ import (
 	"io"
 	"io/fs"
 	"os"
+	"path/filepath"
 	"strings"
 
 	"hazewright"
+	"hazewright/reports"
 )
 
 // maxStdin bounds a study read from standard input [bytes].
@@ -86,30 +88,11 @@ func (a *app) note(format string, args ...any) {
 	}
 }
 
-// warn prints the warnings of one study, unless --quiet is set.
-func (a *app) warn(study, design string, ws []hazewright.Warning) {
-	for _, w := range ws {
-		text := w.Text
-		for _, part := range []string{w.Where, design, study} {
-			if part != "" {
-				text = part + ": " + text
-			}
-		}
-		a.note("warning: %s", text)
-	}
-}
-
 // warnAbout prints the warnings of results.
 func (a *app) warnAbout(results []*hazewright.Result) {
 	for _, r := range results {
-		study := ""
-		if len(results) > 1 {
-			study = r.Study.File
-		}
-		a.warn(study, "", r.Study.Warnings)
-		a.warn(study, "", r.Warnings)
-		for _, d := range r.Designs {
-			a.warn(study, d.Name, d.Warnings)
+		for _, w := range reports.Warnings(r) {
+			a.note("warning: %s", w)
 		}
 	}
 }
@@ -118,10 +101,7 @@ func (a *app) warnAbout(results []*hazewright.Result) {
 func warnings(results []*hazewright.Result) int {
 	n := 0
 	for _, r := range results {
-		n += len(r.Study.Warnings) + len(r.Warnings)
-		for _, d := range r.Designs {
-			n += len(d.Warnings)
-		}
+		n += len(reports.Warnings(r))
 	}
 	return n
 }
@@ -134,11 +114,20 @@ func (a *app) strictly(n int) error {
 	return nil
 }
 
-// reproducing returns the command line that gives the same results of a study again:
-// what decides them and nothing else, so that outputs do not differ by where they were
-// written or by how many processors worked.
-func reproducing(study string, sets []string) string {
-	words := []string{"hazewright", "assess", study}
+// reproducing returns the command line that gives the same results of studies again, in
+// their folder: what decides them and nothing else, so that outputs do not differ by where
+// the studies lie, where they were written or how many processors worked.
+func reproducing(verb string, studies, sets []string) string {
+	names := make([]string, len(studies))
+	for i, s := range studies {
+		names[i] = filepath.Base(s)
+	}
+	return command(verb, names, sets)
+}
+
+// command returns a command line, quoted for a shell.
+func command(verb string, studies, sets []string) string {
+	words := append([]string{"hazewright", verb}, studies...)
 	for _, set := range sets {
 		words = append(words, "--set", set)
 	}

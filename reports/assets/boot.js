@@ -65,10 +65,11 @@
         return lines.join("\n");
       };
     },
-    item: function () {
+    item: function (option) {
       return function (p) {
-        var v = Array.isArray(p.value) ? p.value[0] : p.value;
-        return text(p.seriesName) + "\n" + text(p.name) + ": " + num(v);
+        var marks = Array.isArray(p.value), v = marks ? p.value[0] : p.value;
+        var row = marks ? first(option.yAxis).data[p.value[1]] : p.name;
+        return text(p.seriesName) + "\n" + text(row) + ": " + num(v);
       };
     },
     // The letter of a segment; the legend under the chart has the same letters.
@@ -137,8 +138,8 @@
   }
 
   // Bars get room by their number.
-  function rows(box) { return Number(box.getAttribute("data-rows")); }
-  boxes.forEach(function (box) { if (rows(box)) { box.style.height = 90 + 46 * rows(box) + "px"; } });
+  function tall(box) { return Number(box.getAttribute("data-height")); }
+  boxes.forEach(function (box) { if (tall(box)) { box.style.height = tall(box) + "px"; } });
 
   drawAll(false);
   dark.addEventListener("change", function () { if (!printing.matches) { drawAll(false); } });
@@ -149,8 +150,7 @@
     if (dark.matches) { drawAll(true); }
     drawn.forEach(function (c, i) {
       if (c) {
-        var tall = rows(boxes[i]) ? 90 + 46 * rows(boxes[i]) : boxes[i].classList.contains("flow") ? 360 : 280;
-        c.resize({width: 680, height: tall});
+        c.resize({width: 680, height: tall(boxes[i]) || (boxes[i].classList.contains("flow") ? 230 : 205)});
         c.getZr().flush();
       }
     });
