@@ -5,6 +5,9 @@
 // Assumptions throughout: particles far apart, random orientation, unpolarised light,
 // vacuum around them, refractive index n + ik with exp(-i omega t). SI units.
 //
+// Rods are solved by [rod.Standard] unless [Particle.Method] says otherwise: within 1e-5 of
+// [rod.Reference] in thermal means and within 1e-3 in solar means of the iron and aluminium rods tested.
+//
 // Worked example: a population of iron rods 8 um x 80 nm is
 //
 //	iron, _ := material.ByName("iron")

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"sync"
 
 	"hazewright/optics/material"
 	"hazewright/optics/mie"
@@ -46,12 +47,16 @@ type Particle struct {
 	// resistivity (see [rod.SurfaceScatteredIndex]); it has no effect on spheres.
 	SurfaceScattering bool
 
+	// Method is how rods are computed: [rod.Standard] (or ""), [rod.Reference] or [rod.Fast]; it
+	// has no effect on spheres.
+	Method string
+
 	Material *material.Material
 }
 
 // Validate returns every reason why the particle cannot be used, joined, or nil: shape,
 // sizes within MinRadius..MaxRadius or MinDiameter and MaxLength, length at least 10 diameters, spread
-// from 1 to 3, an oxide skin that leaves at least half the diameter, a material.
+// from 1 to 3, a known method, an oxide skin that leaves at least half the diameter, a material.
 func (p Particle) Validate() error {
 	var errs []error
 	bad := func(format string, args ...any) { errs = append(errs, fmt.Errorf(format, args...)) }
@@ -76,6 +81,11 @@ func (p Particle) Validate() error {
 	default:
 		bad("shape %q is unknown; use %s or %s", p.Shape, Sphere, Rod)
 	}
+	switch p.Method {
+	case "", rod.Standard, rod.Reference, rod.Fast:
+	default:
+		bad("method %q is unknown; use %s, %s or %s", p.Method, rod.Standard, rod.Reference, rod.Fast)
+	}
 	if !(p.Spread == 0 || p.Spread >= 1 && p.Spread <= MaxSpread) {
 		bad("spread %.4g is outside 1 to %d", p.Spread, MaxSpread)
 	}
@@ -90,8 +100,24 @@ func (p Particle) Validate() error {
 	return errors.Join(errs...)
 }
 
+// rods is what a population of rods reuses from one wavelength to the next.
+type rods struct {
+	options    rod.Options
+	workspaces sync.Pool
+}
+
+func newRods(method string) *rods {
+	if method == "" {
+		method = rod.Standard
+	}
+	return &rods{
+		options:    rod.Options{Method: method, Memo: rod.NewMemo()},
+		workspaces: sync.Pool{New: func() any { return new(rod.Workspace) }},
+	}
+}
+
 // at returns the cross-sections of particles of the given sizes (radius or length) [m].
-func (p Particle) at(wavelength float64, sizes []Node, out []CrossSection) error {
+func (p Particle) at(wavelength float64, sizes []Node, out []CrossSection, rods *rods) error {
 	m, err := p.Material.Index(wavelength)
 	if err != nil {
 		return err
@@ -112,7 +138,9 @@ func (p Particle) at(wavelength float64, sizes []Node, out []CrossSection) error
 	if p.SurfaceScattering {
 		m = rod.SurfaceScatteredIndex(m, wavelength, core, p.Material.SurfaceRhoL)
 	}
-	section, err := rod.NewSection(wavelength, core, m)
+	work := rods.workspaces.Get().(*rod.Workspace)
+	defer rods.workspaces.Put(work)
+	section, err := work.Section(wavelength, core, m, rods.options)
 	if err != nil {
 		return err
 	}

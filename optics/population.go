@@ -22,6 +22,7 @@ type Population struct {
 	nodes    []Node
 	mass     float64 // [kg], mean of one particle
 	area     float64 // [m2], mean projected area
+	rods     *rods   // nil for spheres
 }
 
 // NewPopulation returns the population of a particle kind. A spread above 1 is log-normal in
@@ -65,6 +66,9 @@ func newPopulation(p Particle, count int) (*Population, error) {
 		quad.Hermite{}.FixedLocations(t, w, math.Inf(-1), math.Inf(1))
 	}
 	pop := &Population{particle: p}
+	if p.Shape == Rod {
+		pop.rods = newRods(p.Method)
+	}
 	moment := p.volume(median) * math.Exp(4.5*s*s)
 	if p.Shape == Rod {
 		moment = p.volume(median) * math.Exp(0.5*s*s)
@@ -122,7 +126,7 @@ func (p *Population) At(wavelength float64) (CrossSection, error) {
 		each = make([]CrossSection, len(p.nodes))
 	}
 	each = each[:len(p.nodes)]
-	if err := p.particle.at(wavelength, p.nodes, each); err != nil {
+	if err := p.particle.at(wavelength, p.nodes, each, p.rods); err != nil {
 		return CrossSection{}, err
 	}
 	var sum CrossSection

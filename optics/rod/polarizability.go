@@ -6,41 +6,44 @@ import (
 	"math/cmplx"
 )
 
-// Polarizability returns the static polarizability of a rod [m3], along and across its
-// axis, defined by p = eps0 alpha E, for a relative permittivity eps; cmplx.Inf() or any
-// infinite eps stands for a conductor. The mean over orientations is (axial + 2
-// transverse)/3. Axial: the antenna modes of [Section.Rod] in the limit of a long wave,
+// Polarizability returns the static polarizability of a rod with flat ends [m3], along and
+// across its axis, defined by p = eps0 alpha E, for a relative permittivity eps; cmplx.Inf() or
+// any infinite eps stands for a conductor. The mean over orientations is (axial + 2
+// transverse)/3. Axial: the solver of [Section.Rod] in the limit of a long wave,
 //
-//	alpha = (i eta/k) V^T Z^-1 V,   V_n = int sin(n pi z/L) dz
+//	alpha = (6 pi i/k^3) tr(R Y)
 //
-// transverse: the infinite cylinder, 2 V (eps - 1)/(eps + 1). Axial within about 2 to 3 %
-// of the exact value, as [Section.Rod] in that limit; transverse leaves out the ends, a
-// share d/L. Errors: length or diameter not positive and finite, aspect ratio below [MinAspect].
+// within 0.2 % for lengths above 20 diameters. Transverse: the infinite cylinder, 2 V (eps -
+// 1)/(eps + 1), which leaves out the ends, a share d/L. Errors: length or diameter not positive
+// and finite, aspect ratio outside [MinAspect] to [MaxAspect].
 func Polarizability(length, diameter float64, eps complex128) (axial, transverse complex128, err error) {
-	if !(length > 0) || !(diameter > 0) || math.IsInf(length, 0) || length < MinAspect*diameter {
-		return 0, 0, fmt.Errorf("rod: length %g m and diameter %g m must be positive, length at least %d diameters", length, diameter, MinAspect)
+	if err := checkShape(length, diameter); err != nil {
+		return 0, 0, err
 	}
-	k := 1e-3 / length // long wave; the error is of order (kL)^2
-	w := newAntenna(k, length+endLength*diameter, diameter/2)
+	tube := FlatEnds(length, diameter)
+	phase, aspect := 1e-3, tube/diameter // the error is of order (kL)^2
 	area := math.Pi * diameter * diameter / 4
-	var internal complex128 // reactance per length, Z/i
+	var z complex128
 	transverse = complex(2*area*length, 0)
 	if !cmplx.IsInf(eps) {
-		internal = complex(freeSpaceImpedance/(k*area), 0) / (eps - 1)
+		z = complex(0, freeSpaceImpedance*tube*tube/(phase*area)) / (eps - 1)
 		transverse *= (eps - 1) / (eps + 1)
 	}
-	var y block
-	for i := range w.size {
-		for j := range w.size {
-			y[i][j] = complex(w.reactance[0][i][j], 0)
-		}
-		y[i][i] += internal * complex(w.length/2, 0)
+	modes, _ := need(phase, aspect, z)
+	var s solver
+	m := new(builder).build(phase, aspect, (modes+1)/2)
+	s.solve(m, m.size, z)
+	return s.trace * complex(0, 6*math.Pi*math.Pow(tube/phase, 3)), transverse, nil
+}
+
+// checkShape returns an error unless length and diameter [m] are those of a rod.
+func checkShape(length, diameter float64) error {
+	if !(diameter > 0) || math.IsInf(diameter, 0) {
+		return fmt.Errorf("rod: diameter %g m must be positive and finite", diameter)
 	}
-	invert(&y, w.size)
-	for i := range w.size {
-		for j := range w.size {
-			axial += complex(4/(w.wavenumber(0, i)*w.wavenumber(0, j)), 0) * y[i][j]
-		}
+	if !(length >= MinAspect*diameter && length <= MaxAspect*diameter) {
+		return fmt.Errorf("rod: length %g m over diameter %g m is %.3g, outside %d to %g: the thin-wire model does not hold; use a longer or thinner rod",
+			length, diameter, length/diameter, MinAspect, float64(MaxAspect))
 	}
-	return axial * complex(freeSpaceImpedance/k, 0), transverse, nil
+	return nil
 }
