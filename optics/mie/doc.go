@@ -1,5 +1,5 @@
-// Package mie computes how spheres and long cylinders of a uniform material
-// absorb and scatter light, from the exact series solutions.
+// Package mie computes how spheres, layered spheres and long cylinders absorb and
+// scatter light, from the exact series solutions.
 //
 // Conventions throughout: refractive index m = n + ik with time dependence
 // exp(-i omega t), so absorption means k > 0; the particle stands in vacuum; the

@@ -1,38 +1,16 @@
 package mie
 
 import (
-	"fmt"
 	"math"
 	"math/cmplx"
 )
 
-// Limits of the arguments that [Sphere] and [Cylinder] accept. They hold 1 nm at
-// radio wavelengths and 10 mm in sunlight; the cap on |m| x bounds the work, which
-// grows in proportion to it.
-const (
-	MinSize        = 1e-10
-	MaxSize        = 5e5
-	MinIndex       = 1e-4 // of |m|
-	MaxIndex       = 1e6
-	MaxOpticalSize = 5e6 // of |m| x
-)
-
-// Efficiencies are the cross-sections of a sphere over its geometric
-// cross-section pi a^2 [1], and the asymmetry of its scattering.
-//
-// Back is the radar backscattering efficiency 4 |S1(180 deg)|^2 / x^2 (the
-// definition of [BohrenHuffman1983], appendix A). G is the mean cosine of the
-// scattering angle. Ext = Sca + Abs holds by construction.
-type Efficiencies struct {
-	Ext, Sca, Abs, Back, G float64
-}
-
 // Sphere returns the efficiencies of a homogeneous sphere of size parameter
 // x = 2 pi a/lambda [1] and refractive index m = n + ik relative to vacuum, from
 // the full series ([BohrenHuffman1983], eq. 4.53 with the Riccati-Bessel functions
-// psi and xi = psi - i chi). With rho_n(z) = psi_{n+1}(z)/psi_n(z), taken downward,
+// psi and xi = psi - i chi). With rho_n = psi_{n+1}(mx)/psi_n(mx),
 //
-//	u_a = (n+1)/x (1/m^2 - 1) - rho_n(mx)/m,   u_b = -m rho_n(mx)
+//	u_a = (n+1)/x (1/m^2 - 1) - rho_n/m,   u_b = -m rho_n
 //	num = psi_{n+1} + u psi_n,   den = num - i (chi_{n+1} + u chi_n),   a, b = num/den
 //	Re a - |a|^2 = -Im(u_a)/|den|^2, and the same for b
 //
@@ -41,132 +19,180 @@ type Efficiencies struct {
 //
 // Holds for [MinSize] <= x <= [MaxSize], Re m > 0, Im m >= 0, [MinIndex] <= |m| <=
 // [MaxIndex] and |m| x <= [MaxOpticalSize]. Between x = 1e-6 and 1e4 the tests hold it
-// against arbitrary-precision rows to a relative 1e-10 (Back 1e-8); measured are 1e-12
-// and 1e-10. Errors: any argument outside that range or not finite.
+// against arbitrary-precision rows to a relative 1e-12 (Back 1e-10). Errors: any
+// argument outside that range or not finite.
+//
+// For many spheres use a [Solver], which does not allocate.
 func Sphere(x float64, m complex128) (Efficiencies, error) {
-	if err := checkArguments(x, m); err != nil {
+	var s Solver
+	return s.Sphere(x, m)
+}
+
+// Sphere is the function [Sphere], with the work space kept for the next call.
+func (s *Solver) Sphere(x float64, m complex128) (Efficiencies, error) {
+	if err := checkArguments("sphere", x, m); err != nil {
 		return Efficiencies{}, err
 	}
-	n := int(x+7.5*math.Cbrt(x)) + 8 // enough terms for rounding level in all five results
-	// The downward start above |mx| must grow as |mx|^(1/3), or weak absorbers come out wrong.
-	y := m * complex(x, 0)
-	rho := ratiosComplex(y, n)
-	r := ratiosReal(x, n+1)
+	if imag(m) == 0 {
+		return s.transparent(x, real(m)), nil
+	}
+	return s.absorbing(x, m), nil
+}
+
+// absorbing computes the coefficients of the series for an absorbing sphere.
+func (s *Solver) absorbing(x float64, m complex128) Efficiencies {
+	n, psi, psiNext := s.secondKind(x)
+	rho := s.room(n+1, n+1)
+	fillRatios(rho, m*complex(x, 0))
+	chi, orders := s.chi[:n+2], s.orders[:n+1]
 
 	rx := 1 / x
-	rm := 1 / m
+	mr, mi := real(m), imag(m)
+	rm := reciprocal(m)
+	rmr, rmi := real(rm), imag(rm)
 	// (1/m^2 - 1)/x: real part factored (m near 1), imaginary part from 1/m^2
 	// directly, since the factored product loses digits of it for large |m|.
 	rm2 := rm * rm
-	contrast := complex(real((1-m)*(1+m)*rm2)*rx, imag(rm2)*rx)
+	cr, ci := real((1-m)*(1+m)*rm2)*rx, imag(rm2)*rx
 
-	sin, cos := math.Sincos(x)
-	psi := r[0] * sin // psi_1, normalised by the larger of psi_0 and psi_1
-	if math.Abs(sin) < 0.5 && x > 1 {
-		psi = sin*rx - cos
-	}
-	chiPrev, chi := cos, cos*rx+sin // chi_0, chi_1
+	chiNext := chi[n+1]
+	for k := n; k >= 1; k-- {
+		chiK := chi[k]
+		fk := float64(k)
+		f := fk + fk + 1
+		rhoR, rhoI := real(rho[k]), imag(rho[k])
 
-	var sca, abs, g float64
-	var back, aPrev, bPrev complex128
-	sign := -1.0
-	for i := 1; i <= n; i++ {
-		w := float64(2*i + 1)
-		psiNext := r[i] * psi
-		chiNext := w*rx*chi - chiPrev
+		// With A = psi_{k+1} + Re(u) psi_k, C = chi_{k+1} + Re(u) chi_k, v = Im u and
+		// psi_k chi_{k+1} - psi_{k+1} chi_k = 1, the products of num and den come out real:
+		// |num|^2 = A^2 + v^2 psi^2, |den|^2 = |num|^2 + C^2 + v^2 chi^2 - 2v,
+		// Re(num conj den) = |num|^2 - v, Im(num conj den) = A C + v^2 psi chi.
+		psi2, chi2, cross := psi*psi, chiK*chiK, psi*chiK
 
-		u := complex(float64(i+1), 0)*contrast - rho[i]*rm
-		a, lossA := coefficient(u, psi, psiNext, chi, chiNext)
-		u = -m * rho[i]
-		b, lossB := coefficient(u, psi, psiNext, chi, chiNext)
+		o := &orders[k]
+		u := (fk+1)*cr - rmr*rhoR + rmi*rhoI
+		v := (fk+1)*ci - rmr*rhoI - rmi*rhoR
+		A, C, v2 := psiNext+psi*u, chiNext+chiK*u, v*v
+		re := A*A + v2*psi2 - v
+		o.aRe, o.aIm, o.aLoss = re, A*C+v2*cross, -v
+		o.aDen = re - v + C*C + v2*chi2
 
-		sca += w * (norm(a) + norm(b))
-		abs += w * (lossA + lossB)
-		back += complex(sign*w, 0) * (a - b)
-		f := float64(i)
-		g += w / (f * (f + 1)) * dot(a, b)
-		if i > 1 {
-			g += (f - 1) * (f + 1) / f * (dot(aPrev, a) + dot(bPrev, b))
-		}
-		aPrev, bPrev = a, b
-		psi, chiPrev, chi = psiNext, chi, chiNext
-		sign = -sign
-		if math.Abs(chi) > 1e290 { // psi^2/chi^2 left is far below rounding
-			break
-		}
+		u = mi*rhoI - mr*rhoR
+		v = -mr*rhoI - mi*rhoR
+		A, C, v2 = psiNext+psi*u, chiNext+chiK*u, v*v
+		re = A*A + v2*psi2 - v
+		o.bRe, o.bIm, o.bLoss = re, A*C+v2*cross, -v
+		o.bDen = re - v + C*C + v2*chi2
+
+		psi, psiNext, chiNext = f*rx*psi-psiNext, psi, chiK
 	}
-	scale := 2 * rx * rx
-	e := Efficiencies{Sca: scale * sca, Back: norm(back) * rx * rx}
-	if imag(m) > 0 {
-		e.Abs = scale * abs
-	}
-	e.Ext = e.Sca + e.Abs
-	if e.Sca > 0 {
-		e.G = 2 * scale * g / e.Sca
-	}
-	return e, nil
+	return s.efficiencies(n, rx)
 }
 
-// coefficient returns a scattering coefficient and its absorption term
-// Re a - |a|^2 from the ratio u of one order.
-func coefficient(u complex128, psi, psiNext, chi, chiNext float64) (complex128, float64) {
-	num := complex(psiNext+real(u)*psi, imag(u)*psi)
-	// den = num - i (chiNext + u chi)
-	den := complex(real(num)+imag(u)*chi, imag(num)-chiNext-real(u)*chi)
-	inv := 1 / norm(den)
-	a := complex((real(num)*real(den)+imag(num)*imag(den))*inv, (imag(num)*real(den)-real(num)*imag(den))*inv)
-	return a, -imag(u) * inv
-}
-
-// ratiosComplex returns rho_k(z) = psi_{k+1}(z)/psi_k(z) for k = 0..n by downward
-// recurrence from well above both n and |z|.
-func ratiosComplex(z complex128, n int) []complex128 {
-	az := cmplx.Abs(z)
-	start := int(math.Max(float64(n), az)+8*math.Cbrt(az)) + 18
-	rho := make([]complex128, n+1)
-	rz := 1 / z
-	var r complex128
-	for k := start; k >= 0; k-- {
-		f := float64(2*k + 3)
-		d := complex(f*real(rz)-real(r), f*imag(rz)-imag(r))
-		inv := 1 / norm(d)
-		r = complex(real(d)*inv, -imag(d)*inv)
-		if k <= n {
-			rho[k] = r
-		}
-	}
-	return rho
-}
-
-// ratiosReal is [ratiosComplex] for a real argument.
-func ratiosReal(x float64, n int) []float64 {
-	start := int(math.Max(float64(n), x)+8*math.Cbrt(x)) + 18
-	rho := make([]float64, n+1)
+// transparent is [Solver.absorbing] in real arithmetic, for a real index. Psi_n,
+// proportional to psi_n(mx), multiplies every coefficient, so that its zeros do no harm.
+func (s *Solver) transparent(x, m float64) Efficiencies {
+	n, psi, psiNext := s.secondKind(x)
+	s.room(n+1, 0)
 	rx := 1 / x
-	r := 0.0
-	for k := start; k >= 0; k-- {
-		r = 1 / (float64(2*k+3)*rx - r)
-		if k <= n {
-			rho[k] = r
+	rm := 1 / m
+	rz := rm * rx
+	contrast := (1 - m) * (1 + m) * rm * rm * rx
+
+	p, q := 0.0, 1.0 // Psi_{k+1}, Psi_k
+	for k := startOrder(m*x, n); k > n; k-- {
+		p, q = q, float64(2*k+1)*rz*q-p
+		if math.Abs(q) > 1e15 {
+			p, q = p/q, 1
 		}
 	}
-	return rho
-}
+	for k := n; k >= 1; k-- {
+		if math.Abs(q) > 1e15 {
+			p, q = p/q, 1
+		}
+		fk := float64(k)
+		f := fk + fk + 1
+		u := (fk+1)*contrast*q - rm*p
+		aNum, aDen := psiNext*q+psi*u, s.chi[k+1]*q+s.chi[k]*u
+		u = -m * p
+		bNum, bDen := psiNext*q+psi*u, s.chi[k+1]*q+s.chi[k]*u
+		s.orders[k] = order{ // a = num/(num - i den)
+			aRe: aNum * aNum, aIm: aNum * aDen, aDen: aNum*aNum + aDen*aDen,
+			bRe: bNum * bNum, bIm: bNum * bDen, bDen: bNum*bNum + bDen*bDen,
+		}
 
-func checkArguments(x float64, m complex128) error {
-	n, k := real(m), imag(m)
-	switch {
-	case !(x >= MinSize && x <= MaxSize):
-		return fmt.Errorf("size parameter %g is outside %g to %g", x, MinSize, MaxSize)
-	case !(n > 0) || !(k >= 0) || math.IsInf(n, 0) || math.IsInf(k, 0):
-		return fmt.Errorf("refractive index %g%+gi is not usable: want n > 0 and k >= 0, finite", n, k)
-	case cmplx.Abs(m) < MinIndex || cmplx.Abs(m) > MaxIndex:
-		return fmt.Errorf("refractive index %g%+gi is outside |m| = %g to %g", n, k, MinIndex, MaxIndex)
-	case cmplx.Abs(m)*x > MaxOpticalSize:
-		return fmt.Errorf("|m| x = %g is above %g: sphere or cylinder too large for this series", cmplx.Abs(m)*x, MaxOpticalSize)
+		p, q = q, f*rz*q-p
+		psi, psiNext = f*rx*psi-psiNext, psi
 	}
-	return nil
+	return s.efficiencies(n, rx)
 }
 
-func norm(z complex128) float64   { return real(z)*real(z) + imag(z)*imag(z) }
-func dot(a, b complex128) float64 { return real(a)*real(b) + imag(a)*imag(b) }
+// fillRatios sets rho[k] = psi_{k+1}(z)/psi_k(z), Im z > 0 or not, from a sequence Psi_k
+// proportional to psi_k(z) that comes down by the three-term recurrence. The division is
+// outside the chain of operations that wait for each other. Absorption needs
+// Im rho_k = w_k/|Psi_k|^2, a sum of positive terms:
+//
+//	w_k = Im(Psi_{k+1} conj Psi_k),   w_{k-1} = w_k - (2k+1) Im(1/z) |Psi_k|^2
+func fillRatios(rho []complex128, z complex128) {
+	n := len(rho) - 1
+	rz := reciprocal(z)
+	rzr, rzi := real(rz), imag(rz)
+	k, pr, pi := startRatio(z, n) // Psi_{k+1}
+	qr, qi := 1.0, 0.0            // Psi_k
+	w := pi
+	for ; k > n; k-- {
+		f := float64(2*k + 1)
+		fr, fi := f*rzr, f*rzi
+		q2 := qr*qr + qi*qi
+		w -= fi * q2
+		pr, pi, qr, qi = qr, qi, fr*qr-fi*qi-pr, fr*qi+fi*qr-pi
+		if q2 > 1e30 {
+			pr, pi, qr, qi, w = rescale(pr, pi, qr, qi, w)
+		}
+	}
+	for ; k >= 0; k-- {
+		f := float64(2*k + 1)
+		fr, fi := f*rzr, f*rzi
+		q2 := qr*qr + qi*qi + 1e-290 // never zero
+		inv := 1 / q2
+		rho[k] = complex((pr*qr+pi*qi)*inv, w*inv)
+		w -= fi * q2
+		pr, pi, qr, qi = qr, qi, fr*qr-fi*qi-pr, fr*qi+fi*qr-pi
+		if q2 > 1e30 {
+			pr, pi, qr, qi, w = rescale(pr, pi, qr, qi, w)
+		}
+	}
+}
+
+// rescale divides a pair of the recurrence, and the quadratic w, by the size of the
+// second of the pair, against overflow.
+func rescale(pr, pi, qr, qi, w float64) (float64, float64, float64, float64, float64) {
+	f := 1 / (math.Abs(qr) + math.Abs(qi))
+	return pr * f, pi * f, qr * f, qi * f, w * f * f
+}
+
+// startRatio returns an order k >= n and psi_{k+1}(z)/psi_k(z) there, good enough for
+// a downward recurrence to be right at order n. Deep inside an absorber the
+// recurrence forgets its start within a few orders, exp(-2 Re arccosh(nu/z)) each, and
+// the ratio of the leading term will do; else the start is above |z|, from zero.
+func startRatio(z complex128, n int) (k int, re, im float64) {
+	az := math.Sqrt(norm(z))
+	if az > float64(2*n+100) {
+		if w := leadingRatio(z, n); norm(w) < 0.7 {
+			k = n + 3 + int(36/-math.Log(norm(w)))
+			w = leadingRatio(z, k)
+			return k, real(w), imag(w)
+		}
+	}
+	return startOrder(az, n), 0, 0
+}
+
+// leadingRatio is the leading term of psi_{k+1}(z)/psi_k(z) for large k + |z|:
+// exp(-arccosh(nu/z)), nu = k + 3/2.
+func leadingRatio(z complex128, k int) complex128 {
+	nu := complex(float64(k)+1.5, 0)
+	root := cmplx.Sqrt((nu - z) * (nu + z))
+	if real(root*cmplx.Conj(nu/z)) < 0 && norm(nu+root) < norm(nu-root) {
+		root = -root
+	}
+	return z / (nu + root)
+}
