@@ -223,14 +223,21 @@ func (l *loader) particle(n *node, path string) Particle {
 	thickness := 0.0
 	switch p.Shape {
 	case "sphere":
-		l.need(n, path, "a sphere takes a radius", []string{"radius"}, []string{"length", "diameter"})
+		l.need(n, path, "a sphere takes a radius", []string{"radius"}, []string{"length", "diameter", "wall", "core"})
 		p.Radius = n.si("radius")
 		thickness = p.Radius
 	case "rod":
-		l.need(n, path, "a rod takes length and diameter", []string{"length", "diameter"}, []string{"radius"})
+		l.need(n, path, "a rod takes length and diameter", []string{"length", "diameter"}, []string{"radius", "wall", "core"})
 		p.Length, p.Diameter = n.si("length"), n.si("diameter")
 		thickness = p.Diameter / 2
 		l.checkAspect(n, p, path)
+	case "shell":
+		l.need(n, path, "a shell takes a radius and a wall", []string{"radius", "wall"}, []string{"length", "diameter"})
+		p.Radius, p.Wall = n.si("radius"), n.si("wall")
+		if p.Core = n.word("core"); p.Core == hollow {
+			p.Core = ""
+		}
+		l.checkWall(n, p, path)
 	}
 	if n.has("oxide") {
 		p.Oxide = n.si("oxide")
@@ -247,7 +254,11 @@ func (l *loader) checkSpread(n *node, p Particle, path string) {
 	if err != nil || !n.has("spread") {
 		return
 	}
-	sizes, err := optics.NewPopulation(opticsParticle(p, m))
+	described, err := opticsParticle(p, m)
+	if err != nil {
+		return
+	}
+	sizes, err := optics.NewPopulation(described)
 	if err != nil {
 		return
 	}
@@ -301,6 +312,17 @@ func (l *loader) need(n *node, path, hint string, must, mustNot []string) {
 		if slices.Contains(mustNot, m.key) {
 			l.faultAt(m.at, m.value.alias, path+"."+m.key, "", problem{what: "does not belong to this shape", hint: hint})
 		}
+	}
+}
+
+// hollow is the core of a shell with nothing inside.
+const hollow = "hollow"
+
+// checkWall refuses a wall that leaves no inside.
+func (l *loader) checkWall(n *node, p Particle, path string) {
+	if n.has("radius") && n.has("wall") && p.Wall >= p.Radius {
+		at := n.child("wall")
+		l.fault(at, path+".wall", at.text, problem{what: "is not below the outer radius, " + n.word("radius"), hint: "choose a thinner wall, or shape sphere"})
 	}
 }
 

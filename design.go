@@ -166,7 +166,7 @@ func (f *facts) supplyChain(p *planet) error {
 		d.ReleaseSurvival = append(d.ReleaseSurvival, fate.usedSurvival)
 		mass := pop.Share * f.burdenValue * f.area
 		stream := logistics.Stream{Name: pop.name, Material: pop.Material.Name, Population: i,
-			ParticleMass: pop.meanMass, Density: pop.density, Inventory: mass}
+			ParticleMass: pop.meanMass, Density: pop.solidDensity(), Inventory: mass}
 		if g := f.design.Given.Lifetime; g > 0 {
 			// Everything leaves at the given rate and nothing comes back.
 			stream.NewResidence, stream.LiftedResidence = g, g

@@ -20,6 +20,8 @@ designs:
   - name: Printed rod, as published
     particles: [{shape: rod, length: 10 um, diameter: 120 nm, material: aluminium}]
     given: {lifetime: 10 yr}
+  - name: Frosted shells
+    particles: [{shape: shell, radius: 4 um, wall: 30 nm, core: water-ice, material: aluminium}]
 benchmarks:
   - {design: "Printed rod, as published", figure: burden, value: 150 mg/m2, source: "report Q, table 2"}
 fate:

@@ -383,7 +383,7 @@ func TestLoad_SpellingsOfAQuantityAreOneStudy(t *testing.T) {
 
 func TestLoad_FullStudy(t *testing.T) {
 	s := mustLoad(t, fullStudy)
-	if got := len(s.Designs); got != 4 {
+	if got := len(s.Designs); got != 5 {
 		t.Fatalf("%d designs", got)
 	}
 	const yr = 31557600.0
@@ -414,7 +414,7 @@ func TestLoad_FullStudy(t *testing.T) {
 		{"plant", s.Designs[0].Supply.Plant.SpecificMass, 25 * 86400.0},
 		{"points", s.Designs[0].Supply.Release.Points, 12},
 		{"stop", s.Designs[0].Supply.StopAt, 80 * yr},
-		{"limit", s.Limits[0], Limit{Figure: "production_rate", AtMost: true, Bound: 5e6 / 86400, Pos: "s.yaml:51:5"}},
+		{"limit", s.Limits[0], Limit{Figure: "production_rate", AtMost: true, Bound: 5e6 / 86400, Pos: "s.yaml:53:5"}},
 		{"law", s.Uncertain[0], Law{At: "fate.burial_time", Kind: "loguniform", Low: yr, High: 30 * yr}},
 		{"law of a design", s.Uncertain[3], Law{At: "designs[Iron rods].particles[0].diameter", Kind: "normal", Mean: 80e-9, SD: 8e-9}},
 		{"sweep", s.Sweeps[0], Sweep{Name: "Burial", At: "fate.burial_time", From: 0.5 * yr, To: 50 * yr, Points: 25, Log: true}},

@@ -18,9 +18,11 @@ type population struct {
 	name     string
 
 	optics       *optics.Population
-	material     *material.Material
-	density      float64 // [kg/m3]
-	meanMass     float64 // of one particle aloft [kg]
+	material     *material.Material // of the particle, or of a shell's wall
+	core         *material.Material // of a shell; nil for hollow and for other shapes
+	oxide        float64            // skin [m]
+	density      float64            // of the material [kg/m3]
+	meanMass     float64            // of one particle aloft [kg]
 	volatile     bool
 	thermal      optics.Means // Planck means at the baseline surface temperature [m2/kg]
 	solar        optics.Means
@@ -83,7 +85,15 @@ func describe(q Particle) string {
 	if q.Shape == "rod" {
 		return fmt.Sprintf("rod %s x %s, %s", FormatSI(q.Length, "um", 3), FormatSI(q.Diameter, "nm", 3), q.Material.Name)
 	}
-	return fmt.Sprintf("sphere of radius %s, %s", FormatSI(q.Radius, "um", 3), q.Material.Name)
+	radius := FormatSI(q.Radius, "um", 3)
+	if q.Shape == "sphere" {
+		return fmt.Sprintf("sphere of radius %s, %s", radius, q.Material.Name)
+	}
+	inside := "hollow"
+	if q.Core != "" {
+		inside = "around " + q.Core
+	}
+	return fmt.Sprintf("shell of radius %s, wall %s of %s, %s", radius, FormatSI(q.Wall, "nm", 3), q.Material.Name, inside)
 }
 
 // materialOf returns the built-in material or the user's table of a reference.
@@ -100,13 +110,20 @@ func materialOf(m MaterialRef) (*material.Material, error) {
 
 // opticsParticle describes a population to the optics, with the material's own oxide skin
 // where the study gives none.
-func opticsParticle(q Particle, m *material.Material) optics.Particle {
+func opticsParticle(q Particle, m *material.Material) (optics.Particle, error) {
 	oxide := q.Oxide
 	if oxide < 0 { // not given
 		oxide = m.DefaultOxide
 	}
-	return optics.Particle{Shape: q.Shape, Radius: q.Radius, Length: q.Length, Diameter: q.Diameter,
+	out := optics.Particle{Shape: q.Shape, Radius: q.Radius, Length: q.Length, Diameter: q.Diameter, Wall: q.Wall,
 		Oxide: oxide, Spread: q.Spread, SurfaceScattering: q.SurfaceScattering, Material: m}
+	if q.Core != "" {
+		var err error
+		if out.Core, err = material.ByName(q.Core); err != nil {
+			return optics.Particle{}, fmt.Errorf("core: %w", err)
+		}
+	}
+	return out, nil
 }
 
 // newPopulation works out the optics of a particle; planckTemperature is that of the
@@ -116,11 +133,15 @@ func newPopulation(q Particle, planckTemperature float64) (*population, error) {
 	if err != nil {
 		return nil, err
 	}
-	o, err := optics.NewPopulation(opticsParticle(q, m))
+	described, err := opticsParticle(q, m)
 	if err != nil {
 		return nil, err
 	}
-	p := &population{Particle: q, optics: o, material: m, density: m.Density, meanMass: o.MeanMass(), volatile: m.Volatile}
+	o, err := optics.NewPopulation(described)
+	if err != nil {
+		return nil, err
+	}
+	p := &population{Particle: q, optics: o, material: m, core: described.Core, oxide: described.Oxide, density: m.Density, meanMass: o.MeanMass(), volatile: m.Volatile}
 	for _, light := range []struct {
 		name        string
 		temperature float64
@@ -199,10 +220,38 @@ func (p *population) body(size, mass float64) settling.Body {
 // typical returns the particle of median size, which stands for the population where one
 // particle has to.
 func (p *population) typical() settling.Body {
-	if p.Shape == "rod" {
+	switch p.Shape {
+	case "rod":
 		return settling.RodOf(p.Length, p.Diameter, p.density)
+	case "sphere":
+		return settling.SphereOf(p.Radius, p.density)
 	}
-	return settling.SphereOf(p.Radius, p.density)
+	body := settling.SphereOf(p.Radius, p.density)
+	inside := settling.SphereOf(p.Radius-p.Wall, p.density)
+	body.Mass -= inside.Mass
+	if p.core != nil {
+		body.Mass += inside.Mass * p.core.Density / p.density
+	}
+	return body
+}
+
+// vanishing returns the body whose sublimation time is that of the population's typical
+// particle: of a shell, whose wall is gone when its thickness is, a sphere as thick.
+func (p *population) vanishing() settling.Body {
+	if p.Shape == "shell" {
+		return settling.SphereOf(p.Wall, p.density)
+	}
+	return p.typical()
+}
+
+// solidDensity is the mean density of what the particles are made of [kg/m3]: their mass
+// over the volume of wall and core, without what is hollow.
+func (p *population) solidDensity() float64 {
+	if p.core == nil {
+		return p.density
+	}
+	inside := math.Pow(1-p.Wall/p.Radius, 3) // share of the volume
+	return p.density*(1-inside) + p.core.Density*inside
 }
 
 // settlingPopulation returns the size classes as falling bodies.
@@ -241,6 +290,6 @@ func (p *population) falls(pl *planet) error {
 	if !p.volatile {
 		return nil
 	}
-	p.sublimation, err = settling.SublimationTime(p.typical(), pl.study.World.AirTemperature)
+	p.sublimation, err = settling.SublimationTime(p.vanishing(), pl.study.World.AirTemperature)
 	return err
 }

@@ -30,6 +30,8 @@ var rangeCases = map[string]rangeCase{
 	"goal.optical_depth": {"a goal is one of three", []string{"goal={optical_depth: VALUE, at: thermal}"}},
 
 	"designs[].particles[].radius":           {"the starter has a rod; the thinnest sphere has no room for an oxide", []string{bareSphere}},
+	"low designs[].particles[].wall":         {"only shells have a wall", []string{"designs[0].particles[0]={shape: shell, radius: 1 um, wall: VALUE, material: iron, oxide: 0 nm}"}},
+	"high designs[].particles[].wall":        {"only shells have a wall", []string{"designs[0].particles[0]={shape: shell, radius: 101 um, wall: VALUE, material: iron}"}},
 	"low designs[].particles[].length":       {"a rod is ten times as long as thick", []string{"designs[0].particles[0]={shape: rod, length: VALUE, diameter: 10 nm, material: iron, oxide: 0 nm}"}},
 	"low designs[].particles[].diameter":     {"the thinnest rod has no room for an oxide", []string{"designs[0].particles[0].diameter=VALUE", "designs[0].particles[0].oxide=0 nm"}},
 	"high designs[].particles[].diameter":    {"a rod is ten times as long as thick", []string{"designs[0].particles[0]={shape: rod, length: 100 um, diameter: VALUE, material: iron}"}},

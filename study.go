@@ -73,8 +73,10 @@ type Design struct {
 
 // Particle is one population of a design.
 type Particle struct {
-	Shape             string  // "sphere" or "rod"
-	Radius            float64 // spheres [m]
+	Shape             string  // "sphere", "rod" or "shell"
+	Radius            float64 // spheres and shells, outer [m]
+	Wall              float64 // shells [m]
+	Core              string  // shells: a built-in material, "" for hollow
 	Length, Diameter  float64 // rods [m]
 	Material          MaterialRef
 	Spread            float64 // geometric standard deviation of airborne number; 1 = one size

@@ -17,7 +17,7 @@ func (r *DesignResult) tell(p *planet, f *facts) error {
 		x := PopulationResult{
 			Name: pop.name, Share: pop.Share, Material: pop.Material.Name, Density: pop.density, ParticleMass: pop.meanMass,
 			Metal: pop.material.Metal, Conducts: string(pop.material.Conducts), Combustible: string(pop.material.Combustible),
-			Oxide:        opticsParticle(pop.Particle, pop.material).Oxide,
+			Oxide:        pop.oxide,
 			KappaThermal: pop.thermal.Abs, KappaThermalExt: pop.thermal.Ext, KappaSolarExt: pop.solar.Ext, KappaSolarAbs: pop.solar.Abs,
 			ProjectedArea: pop.optics.MeanProjectedArea() / pop.meanMass,
 			FallSpeed:     pop.groundSpeed, Spectrum: pop.spectrum,

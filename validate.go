@@ -50,7 +50,11 @@ func checkParticle(q Particle) error {
 	if err != nil {
 		return err
 	}
-	if _, err := optics.NewPopulation(opticsParticle(q, m)); err != nil {
+	described, err := opticsParticle(q, m)
+	if err != nil {
+		return err
+	}
+	if _, err := optics.NewPopulation(described); err != nil {
 		return err
 	}
 	thermal, solar := greenhouse.ThermalEdges(), greenhouse.SolarEdges()

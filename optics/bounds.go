@@ -5,10 +5,11 @@ import (
 	"math"
 
 	"hazewright/optics/internal/planck"
+	"hazewright/optics/material"
 )
 
 // MeanPolarizability returns the number and orientation mean of the static polarizability of
-// one particle [m3], p = eps0 alpha E, from [material.Material.StaticPermittivity].
+// one particle [m3], p = eps0 alpha E, from [material.Axis.StaticPermittivity].
 func (p *Population) MeanPolarizability() (float64, error) {
 	sum := 0.0
 	for _, n := range p.nodes {
@@ -58,4 +59,35 @@ func MaterialCap(wavelength float64, m complex128, density float64) (float64, er
 		return 0, fmt.Errorf("material cap needs positive wavelength, density and absorption, not %g m, %g kg/m3, m = %g", wavelength, density, m)
 	}
 	return 2 * math.Pi / wavelength * (real(chi)*real(chi) + imag(chi)*imag(chi)) / (3 * density * imag(chi)), nil
+}
+
+// MaterialCap is the function [MaterialCap] of what the particles are made of: the mean over
+// optical axes, and by mass over wall and core of a shell, since the bound adds up over
+// volume. The indices are those of the bulk, which absorb no less. Errors: the
+// materials' ranges; a part without absorption, for which there is no such cap.
+func (p *Population) MaterialCap(wavelength float64) (float64, error) {
+	var masses [2]float64
+	for _, n := range p.nodes {
+		wall, core := p.particle.masses(n.Size)
+		masses[0] += n.Number * wall
+		masses[1] += n.Number * core
+	}
+	sum := 0.0
+	for i, m := range []*material.Material{p.particle.Material, p.particle.Core} {
+		if m == nil {
+			continue
+		}
+		for axis, a := range m.Axes() {
+			index, err := m.IndexAlong(axis, wavelength)
+			if err != nil {
+				return 0, err
+			}
+			most, err := MaterialCap(wavelength, index, m.Density)
+			if err != nil {
+				return 0, fmt.Errorf("%s: %w", m.Name, err)
+			}
+			sum += masses[i] / p.mass * a.Weight * most
+		}
+	}
+	return sum, nil
 }

@@ -1,5 +1,5 @@
-// Package optics says what a particle does to light: cross-sections of spheres and rods
-// averaged over size, means over bands and over the spectra of the ground and of the Sun, and the
+// Package optics says what a particle does to light: cross-sections of spheres, shells and
+// rods averaged over size and optical axes, means over bands and over the spectra of the ground and of the Sun, and the
 // bounds that no particle of a given size can pass.
 //
 // Assumptions throughout: particles far apart, random orientation, unpolarised light,
@@ -12,7 +12,12 @@
 //
 //	iron, _ := material.ByName("iron")
 //	rods, _ := NewPopulation(Particle{Shape: Rod, Length: 8e-6, Diameter: 80e-9, Material: iron})
-//	means, _ := rods.PlanckMean(210) // means.Abs about 1.4e4 m2/kg
+//	means, _ := PlanckMean(rods, 210) // means.Abs about 1.4e4 m2/kg
+//
+// and of hollow aluminium shells, outer radius 5 um, wall 10 nm, 16 kg/m3 as a whole:
+//
+//	aluminium, _ := material.ByName("aluminium")
+//	shells, _ := NewPopulation(Particle{Shape: Shell, Radius: 5e-6, Wall: 10e-9, Material: aluminium})
 package optics
 
 // CrossSection holds what one particle takes out of a beam [m2]: extinction, scattering and

@@ -9,7 +9,7 @@ import (
 	"hazewright/optics/rod"
 )
 
-// Node is one size class of a [Population]: the size (radius of a sphere, length of a rod) [m],
+// Node is one size class of a [Population]: the size (radius of a sphere, outer radius of a shell, length of a rod) [m],
 // the share of the number of particles (all sum to 1) and the mass of one particle [kg].
 type Node struct {
 	Size, Number, Mass float64
@@ -22,7 +22,8 @@ type Population struct {
 	nodes    []Node
 	mass     float64 // [kg], mean of one particle
 	area     float64 // [m2], mean projected area
-	rods     *rods   // nil for spheres
+	volume   float64 // [m3], mean outer
+	tools    *tools
 }
 
 // NewPopulation returns the population of a particle kind. A spread above 1 is log-normal in
@@ -65,10 +66,7 @@ func newPopulation(p Particle, count int) (*Population, error) {
 		t, w = make([]float64, count), make([]float64, count)
 		quad.Hermite{}.FixedLocations(t, w, math.Inf(-1), math.Inf(1))
 	}
-	pop := &Population{particle: p}
-	if p.Shape == Rod {
-		pop.rods = newRods(p.Method)
-	}
+	pop := &Population{particle: p, tools: newTools(p)}
 	moment := p.volume(median) * math.Exp(4.5*s*s)
 	if p.Shape == Rod {
 		moment = p.volume(median) * math.Exp(0.5*s*s)
@@ -81,13 +79,14 @@ func newPopulation(p Particle, count int) (*Population, error) {
 		if count > 1 && number < 1e-9 && number*volume < 1e-9*moment {
 			continue
 		}
-		if p.Shape == Sphere && size <= 2*p.Oxide {
-			return nil, fmt.Errorf("spread %g puts spheres of radius %.3g nm into an oxide skin of %.3g nm", p.Spread, size*1e9, p.Oxide*1e9)
+		if p.Shape != Rod && size <= 2*p.Oxide {
+			return nil, fmt.Errorf("spread %g puts particles of radius %.3g nm into an oxide skin of %.3g nm", p.Spread, size*1e9, p.Oxide*1e9)
 		}
 		if p.Shape == Rod && size < rod.MinAspect*p.Diameter {
 			short += number * volume
 		}
-		pop.nodes = append(pop.nodes, Node{Size: size, Number: number, Mass: volume * p.Material.Density})
+		wall, core := p.masses(size)
+		pop.nodes = append(pop.nodes, Node{Size: size, Number: number, Mass: wall + core})
 		total += number
 	}
 	for i := range pop.nodes {
@@ -95,6 +94,7 @@ func newPopulation(p Particle, count int) (*Population, error) {
 		n.Number /= total
 		pop.mass += n.Number * n.Mass
 		pop.area += n.Number * p.projectedArea(n.Size)
+		pop.volume += n.Number * p.volume(n.Size)
 	}
 	if share := short * p.Material.Density / (total * pop.mass); share > 0.01 {
 		return nil, fmt.Errorf("spread %g of length %.4g um puts %.2g %% of the mass below %d diameters (%.4g um), where the rod model does not hold; use a smaller spread or thinner rods",
@@ -109,8 +109,13 @@ func (p *Population) Particle() Particle { return p.particle }
 // Nodes returns the size classes, by rising size. The caller owns the slice.
 func (p *Population) Nodes() []Node { return append([]Node(nil), p.nodes...) }
 
-// MeanMass returns the number-mean mass of one particle [kg], outer dimensions.
+// MeanMass returns the number-mean mass of one particle [kg]: outer dimensions, of a shell its
+// wall and core.
 func (p *Population) MeanMass() float64 { return p.mass }
+
+// Density returns the mean mass over the mean outer volume [kg/m3]: that of the material, of a
+// shell that of the particle as a whole.
+func (p *Population) Density() float64 { return p.mass / p.volume }
 
 // MeanProjectedArea returns the number-mean geometric cross-section of one randomly oriented
 // particle [m2], a quarter of its surface.
@@ -126,29 +131,14 @@ func (p *Population) At(wavelength float64) (CrossSection, error) {
 		each = make([]CrossSection, len(p.nodes))
 	}
 	each = each[:len(p.nodes)]
-	if err := p.particle.at(wavelength, p.nodes, each, p.rods); err != nil {
+	if err := p.particle.at(wavelength, p.nodes, each, p.tools); err != nil {
 		return CrossSection{}, err
 	}
-	var sum CrossSection
-	most := 0.0
+	var sum mean
 	for i, n := range p.nodes {
-		c := each[i]
-		sum.Sca += n.Number * c.Sca
-		sum.Abs += n.Number * c.Abs
-		sum.G += n.Number * c.G * c.Sca
-		sum.Err += n.Number * c.Err * c.Ext
-		if v := n.Number * c.Ext; v > most {
-			most, sum.Method = v, c.Method
-		}
+		sum.add(n.Number, each[i])
 	}
-	sum.Ext = sum.Sca + sum.Abs
-	if sum.Sca > 0 {
-		sum.G /= sum.Sca
-	}
-	if sum.Ext > 0 {
-		sum.Err /= sum.Ext
-	}
-	return sum, nil
+	return sum.over(), nil
 }
 
 // Means holds mass-specific means [m2/kg]: absorption, extinction, scattering, and scattering

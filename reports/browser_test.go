@@ -3,6 +3,7 @@ package reports
 import (
 	"context"
 	"fmt"
+	"io"
 	"net/url"
 	"os"
 	"os/exec"
@@ -93,15 +94,21 @@ func (b *tab) call(what string, f func() error) {
 	}
 }
 
-// open writes the report of r to a file and waits until its charts are drawn.
+// open opens the report of r.
 func (b *tab) open(r *hazewright.Result) {
+	b.t.Helper()
+	b.openPage(func(w io.Writer) error { return HTML(w, r, fixtureProvenance) })
+}
+
+// openPage writes a page to a file, opens it and waits until its charts are drawn.
+func (b *tab) openPage(write func(io.Writer) error) {
 	b.t.Helper()
 	path := filepath.Join(b.t.TempDir(), "report.html")
 	file, err := os.Create(path)
 	if err != nil {
 		b.t.Fatal(err)
 	}
-	if err := HTML(file, r, fixtureProvenance); err != nil {
+	if err := write(file); err != nil {
 		b.t.Fatal(err)
 	}
 	if err := file.Close(); err != nil {
@@ -140,8 +147,8 @@ func (b *tab) quiet() {
 	}
 }
 
-// drawn fails unless every chart has marks and labels.
-func (b *tab) drawn() {
+// drawn fails unless there are so many charts at least, and every one has marks and labels.
+func (b *tab) drawn(least int) {
 	b.t.Helper()
 	type box struct {
 		ID    string
@@ -152,8 +159,8 @@ func (b *tab) drawn() {
 	}
 	boxes := evaluate[[]box](b, `Array.from(document.querySelectorAll("[data-chart]")).map(e => ({ID: e.id, Error: e.getAttribute("data-error") || "",
 		Paths: e.querySelectorAll("svg path").length, Texts: e.querySelectorAll("svg text").length, Alt: e.getAttribute("aria-label") || ""}))`)
-	if len(boxes) < 10 {
-		b.t.Errorf("%d charts, want at least 10", len(boxes))
+	if len(boxes) < least {
+		b.t.Errorf("%d charts, want at least %d", len(boxes), least)
 	}
 	for _, c := range boxes {
 		if c.Error != "" || c.Paths < 3 || c.Texts < 3 || len(c.Alt) < 40 {
@@ -170,7 +177,7 @@ func (b *tab) shoot(name string, width, height int) {
 		return
 	}
 	b.call("viewport", func() error { return chromedp.Do(b, chromedp.EmulateViewport(int64(width), int64(height))) })
-	time.Sleep(400 * time.Millisecond) // longer than the page waits before it redraws
+	b.wait()
 	png, err := chromedp.Run(b, chromedp.CaptureScreenshot())
 	if err != nil {
 		b.t.Fatal(err)
@@ -183,7 +190,7 @@ func (b *tab) shoot(name string, width, height int) {
 func TestReportInBrowser(t *testing.T) {
 	b := openTab(t)
 	b.open(fixture())
-	b.drawn()
+	b.drawn(10)
 	b.shoot("light.png", 1200, 8000)
 
 	if overflow := b.narrow(); overflow != "" {
@@ -197,17 +204,13 @@ func TestReportInBrowser(t *testing.T) {
 		const box = chart.getBoundingClientRect();
 		chart.querySelector("svg").parentNode.dispatchEvent(new MouseEvent("mousemove", {clientX: box.left + 200, clientY: box.top + 150, bubbles: true}));
 		return true; })()`)
-	time.Sleep(200 * time.Millisecond)
+	b.wait()
 	if got := evaluate[string](b, `document.querySelector("#chart-warming svg").textContent`); !strings.Contains(got, "Burden [mg/m²]: ") {
 		t.Errorf("no tooltip with the burden in the warming chart: %q", got)
 	}
 
-	b.call("dark", func() error {
-		_, err := chromedp.Call(b, emulation.SetEmulatedMedia, emulation.SetEmulatedMediaParams{
-			Features: []*emulation.MediaFeature{{Name: "prefers-color-scheme", Value: "dark"}}})
-		return err
-	})
-	b.drawn()
+	b.dark()
+	b.drawn(10)
 	if got := evaluate[string](b, `getComputedStyle(document.body).backgroundColor`); got != "rgb(23, 27, 31)" {
 		t.Errorf("dark background is %s", got)
 	}
@@ -216,15 +219,34 @@ func TestReportInBrowser(t *testing.T) {
 	}
 	b.shoot("dark.png", 1200, 8000)
 	b.print("dark.pdf")
-	b.drawn()
+	b.drawn(10)
 	b.quiet()
+}
+
+// wait gives the page time to draw anew: longer than it waits itself after a change of width.
+func (b *tab) wait() { time.Sleep(400 * time.Millisecond) }
+
+// dark sets the reader's preference for dark colours, and gives the charts time to follow.
+func (b *tab) dark() {
+	b.t.Helper()
+	b.call("dark", func() error {
+		_, err := chromedp.Call(b, emulation.SetEmulatedMedia, emulation.SetEmulatedMediaParams{
+			Features: []*emulation.MediaFeature{{Name: "prefers-color-scheme", Value: "dark"}}})
+		return err
+	})
+	for range 20 { // a busy machine takes its time
+		if evaluate[bool](b, `Array.from(document.querySelectorAll("[data-chart] svg")).every(s => s.innerHTML.includes("#a7b0b8"))`) {
+			return
+		}
+		b.wait()
+	}
 }
 
 // narrow sets the width of a telephone and returns what sticks out sideways.
 func (b *tab) narrow() string {
 	b.t.Helper()
 	b.call("viewport", func() error { return chromedp.Do(b, chromedp.EmulateViewport(390, 844)) })
-	time.Sleep(400 * time.Millisecond) // longer than the page waits before it redraws
+	b.wait()
 	if width := evaluate[int](b, `document.documentElement.scrollWidth`); width > 390 {
 		return fmt.Sprintf("the page is %d px wide: %s", width, evaluate[string](b, `Array.from(document.querySelectorAll("body *")).filter(e =>
 			e.getBoundingClientRect().right > 390.5 && !e.closest(".scroll")).map(e => e.tagName + "." + e.className + "#" + e.id).slice(0, 5).join(", ")`))
@@ -264,7 +286,7 @@ func (b *tab) print(name string) {
 func TestReportWithHostileNames(t *testing.T) {
 	b := openTab(t)
 	b.open(evilFixture())
-	b.drawn()
+	b.drawn(10)
 	if got := evaluate[string](b, `document.querySelector("h1").textContent`); got != evilTag {
 		t.Errorf("the heading is %q, want the title as text", got)
 	}

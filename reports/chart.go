@@ -226,6 +226,7 @@ func (l line) series(s charts.SingleSeries) spliced {
 		extra["areaStyle"] = map[string]any{"color": "@line", "opacity": 0.16}
 		extra["itemStyle"] = map[string]any{"color": "@line"}
 		extra["silent"], extra["z"] = true, 0
+		extra["tooltip"] = map[string]any{"show": false} // else the tooltip keeps to its points and names no line
 	case l.thin:
 		style["width"] = 1
 		extra["symbolSize"] = 4

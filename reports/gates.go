@@ -241,8 +241,11 @@ func respirableFibre(_ *hazewright.Result, d *hazewright.DesignResult) (string, 
 // thinnest returns the smallest dimension of a population [m]; where radii spread, at
 // two geometric standard deviations below.
 func thinnest(p hazewright.Particle) float64 {
-	if p.Shape == "rod" {
+	switch p.Shape {
+	case "rod":
 		return min(p.Diameter, p.Length)
+	case "shell":
+		return p.Wall
 	}
 	if p.Spread > 1 {
 		return 2 * p.Radius / (p.Spread * p.Spread)

@@ -18,6 +18,8 @@ import (
 var (
 	//go:embed assets/report.html
 	pageSource string
+	//go:embed assets/parts.html
+	partsSource string
 	//go:embed assets/report.css
 	styleSheet string
 	//go:embed assets/boot.js
@@ -37,7 +39,12 @@ var (
 	licenceTslib string
 )
 
-var pageTemplate = template.Must(template.New("report").Parse(pageSource))
+var pageTemplate = pageOf("report", pageSource)
+
+// pageOf returns the template of a page, with the parts that all pages share.
+func pageOf(name, source string) *template.Template {
+	return template.Must(template.Must(template.New(name).Parse(partsSource)).Parse(source))
+}
 
 // Licence is the licence text of a part that every report carries within itself.
 type Licence struct{ Name, Text string }
@@ -76,21 +83,37 @@ func HTML(w io.Writer, r *hazewright.Result, p Provenance) error {
 	if err != nil {
 		return err
 	}
+	return execute(w, pageTemplate, view)
+}
+
+// execute writes a page.
+func execute(w io.Writer, t *template.Template, view any) error {
 	out := bufio.NewWriterSize(w, 1<<16)
-	if err := pageTemplate.Execute(out, view); err != nil {
-		return fmt.Errorf("reports: writing the report: %w", err)
+	if err := t.Execute(out, view); err != nil {
+		return fmt.Errorf("reports: writing the %s page: %w", t.Name(), err)
 	}
 	if err := out.Flush(); err != nil {
-		return fmt.Errorf("reports: writing the report: %w", err)
+		return fmt.Errorf("reports: writing the %s page: %w", t.Name(), err)
 	}
 	return nil
 }
 
-// page is what the template shows. All strings are data: the template escapes them.
-type page struct {
+// frame is what every page carries: style sheet, scripts, the policy that allows those, and
+// the licences of what they hold.
+type frame struct {
 	CSP           string
 	CSS           template.CSS
 	Echarts, Boot template.JS
+	Licences      []Licence
+}
+
+func newFrame() frame {
+	return frame{securityPolicy(), template.CSS(styleSheet), template.JS(echartsScript), template.JS(bootScript), Licences()}
+}
+
+// page is what the template shows. All strings are data: the template escapes them.
+type page struct {
+	frame
 
 	Title, World, Goal, Scope, Deferral, HingeRule, EstimateNote string
 	Sections                                                     []sectionLink
@@ -108,7 +131,6 @@ type page struct {
 	Words                                                        []Word
 	Version, Command, File, SHA256                               string
 	Tables                                                       []hazewright.TableFile
-	Licences                                                     []Licence
 }
 
 type sectionLink struct{ ID, Title string }
@@ -208,10 +230,9 @@ type inputView struct{ Path, Text, Title, Origin, Source string }
 func newPage(r *hazewright.Result, p Provenance) (*page, error) {
 	s := r.Study
 	v := &page{
-		CSP: securityPolicy(), CSS: template.CSS(styleSheet), Echarts: template.JS(echartsScript), Boot: template.JS(bootScript),
-		Title: clean(s.Title), World: clean(s.World.Name), Goal: typographic(goalText(s.Goal)), Scope: Scope, Deferral: Deferral, HingeRule: hingeRule,
+		frame: newFrame(), Title: clean(s.Title), World: clean(s.World.Name), Goal: typographic(goalText(s.Goal)), Scope: Scope, Deferral: Deferral, HingeRule: hingeRule,
 		Definitions: hazewright.Figures(),
-		Words:       Words(), Version: clean(p.Version), Command: clean(p.Command), File: clean(baseName(s.File)), SHA256: clean(s.SHA256), Licences: Licences(),
+		Words:       Words(), Version: clean(p.Version), Command: clean(p.Command), File: clean(baseName(s.File)), SHA256: clean(s.SHA256),
 	}
 	for i := range r.Designs {
 		d := &r.Designs[i]
@@ -297,13 +318,7 @@ func chartSections(r *hazewright.Result) ([]chartSection, error) {
 			}
 			number++
 			c.Number = number
-			for _, row := range c.Table.Rows {
-				for i, cell := range row {
-					if _, err := strconv.ParseFloat(cell, 64); err == nil { // a number and not a name
-						row[i] = prettyText(cell)
-					}
-				}
-			}
+			c.Table.pretty()
 			section.Charts = append(section.Charts, c)
 		}
 		if len(section.Charts) > 0 {
@@ -311,6 +326,17 @@ func chartSections(r *hazewright.Result) ([]chartSection, error) {
 		}
 	}
 	return out, nil
+}
+
+// pretty writes the numbers of a table as the report has them.
+func (t dataTable) pretty() {
+	for _, row := range t.Rows {
+		for i, cell := range row {
+			if _, err := strconv.ParseFloat(cell, 64); err == nil { // a number and not a name
+				row[i] = prettyText(cell)
+			}
+		}
+	}
 }
 
 // viewOf splits a figure's value into its text and its marks.

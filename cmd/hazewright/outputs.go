@@ -61,7 +61,7 @@ func planFile(flag, path string) (target, error) {
 }
 
 // suffix is what the names of files usually end with.
-var suffix = map[string]string{"--report": ".html", "--json": ".json"}
+var suffix = map[string]string{"--report": ".html", "--json": ".json", "--csv": ".csv", "--chart": ".html"}
 
 // planFolder checks that files can be written into the folder at path.
 func planFolder(flag, path string) (target, error) {

@@ -19,6 +19,7 @@ Scope: whole planet, annual mean, feasibility grade.`
 const rootExample = `  hazewright new thaw                                     a starter study in thaw/study.yaml
   hazewright assess thaw/study.yaml                       the answer as a table
   hazewright assess thaw/study.yaml --report thaw.html    the same with the full report
+  hazewright spectrum thaw/study.yaml --wavelengths 10um   cross-sections of its particles
   hazewright catalogue inputs                             every input with unit, default and range`
 
 const rootAfter = `Settings (a flag wins over its environment variable, that over the settings file,
@@ -69,6 +70,7 @@ func (a *app) rootCommand() *cobra.Command {
 	root.AddCommand(
 		a.assessCommand(),
 		a.compareCommand(),
+		a.spectrumCommand(),
 		a.checkCommand(),
 		a.newCommand(),
 		a.catalogueCommand(),

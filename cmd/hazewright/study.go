@@ -63,12 +63,8 @@ func (a *app) source(path string) (hazewright.Source, error) {
 
 // assess runs the engine on each study in turn, with progress on a terminal.
 func (a *app) assess(ctx context.Context, studies []*hazewright.Study) ([]*hazewright.Result, error) {
-	options := hazewright.Options{Workers: a.settings.Workers}
-	if !a.settings.Quiet && terminalWidth(a.stderr) > 0 {
-		p := newProgress(a.stderr)
-		defer p.stop()
-		options.Progress = p.report
-	}
+	options, stop := a.engineOptions()
+	defer stop()
 	engine := hazewright.NewEngine(options)
 	results := make([]*hazewright.Result, len(studies))
 	for i, s := range studies {
@@ -79,6 +75,18 @@ func (a *app) assess(ctx context.Context, studies []*hazewright.Study) ([]*hazew
 		results[i] = r
 	}
 	return results, nil
+}
+
+// engineOptions returns the options of an engine that shows its progress on a terminal. The
+// caller must call stop when the work is done.
+func (a *app) engineOptions() (o hazewright.Options, stop func()) {
+	o.Workers = a.settings.Workers
+	if a.settings.Quiet || terminalWidth(a.stderr) == 0 {
+		return o, func() {}
+	}
+	p := newProgress(a.stderr)
+	o.Progress = p.report
+	return o, p.stop
 }
 
 // note tells the user something on standard error, unless --quiet is set.
@@ -117,17 +125,18 @@ func (a *app) strictly(n int) error {
 // reproducing returns the command line that gives the same results of studies again, in
 // their folder: what decides them and nothing else, so that outputs do not differ by where
 // the studies lie, where they were written or how many processors worked.
-func reproducing(verb string, studies, sets []string) string {
+func reproducing(verb string, studies, sets []string, flags ...string) string {
 	names := make([]string, len(studies))
 	for i, s := range studies {
 		names[i] = filepath.Base(s)
 	}
-	return command(verb, names, sets)
+	return command(verb, names, sets, flags...)
 }
 
 // command returns a command line, quoted for a shell.
-func command(verb string, studies, sets []string) string {
+func command(verb string, studies, sets []string, flags ...string) string {
 	words := append([]string{"hazewright", verb}, studies...)
+	words = append(words, flags...)
 	for _, set := range sets {
 		words = append(words, "--set", set)
 	}

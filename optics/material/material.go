@@ -25,12 +25,12 @@ type Material struct {
 	Density float64 // [kg/m3]
 
 	MinWavelength, MaxWavelength float64 // range of [Material.Index] [m]
-	DataMin, DataMax             float64 // range of the measured points behind it [m]
+	DataMin, DataMax             float64 // range of the measured points behind it, or that a law was held against [m]
 
 	Source string // where the index was measured
 
-	// FitRMS and FitWorst are the relative errors of the fit on published points held
-	// out of it, the larger of those of n and of k; 0 for tables.
+	// FitRMS and FitWorst are the relative errors on published points, the larger of those of
+	// n and of k and of all points and those held out of the fit; 0 for tables.
 	FitRMS, FitWorst float64
 	FitNote          string // errors of n and k apart, and what is used beyond DataMin and DataMax
 
@@ -41,12 +41,23 @@ type Material struct {
 	Conducts     Answer  // whether a fibre of it conducts electricity
 	Combustible  Answer  // whether fine dust of it burns in breathable air [NFPA484]
 
+	axes                 []Axis
+	heldBelow, heldAbove bool // the end values of the data are held there, a guess
+}
+
+// Axis is one optical axis of a material and its weight [1]. The weights of a material sum to
+// 1; particles with no preferred orientation of the crystal have the weighted mean of the
+// cross-sections that each axis gives alone (of cross-sections, not of indices):
+// exact for pieces much smaller than the wave, customary for all [BohrenHuffman1983].
+type Axis struct {
+	Name   string // "" where there is one for all directions
+	Weight float64
+
 	// StaticPermittivity is the relative permittivity that the index tends to at long
 	// wavelengths [1], +Inf for a conductor.
 	StaticPermittivity float64
 
-	n, k predictor
-	tail tail // nil: end values are held beyond DataMax, if MaxWavelength allows
+	law law
 }
 
 // Answer is yes, no or, for the materials of users' tables, unknown.
@@ -59,12 +70,27 @@ const (
 	Unknown Answer = "unknown"
 )
 
+// law gives an index at a wavelength [m].
+type law interface {
+	index(wavelength float64) complex128
+}
+
 // predictor gives a value at ln(wavelength/m).
 type predictor interface{ Predict(x float64) float64 }
 
-// tail continues an index beyond the last measured point.
-type tail interface {
-	index(wavelength float64) complex128
+// points is the law of measured points from first to last [m], and beyond them.
+type points struct {
+	n, k        predictor
+	first, last float64
+	tail        law // nil: the end value is held
+}
+
+func (p *points) index(wavelength float64) complex128 {
+	if wavelength > p.last && p.tail != nil {
+		return p.tail.index(wavelength)
+	}
+	x := math.Log(min(max(wavelength, p.first), p.last))
+	return complex(p.n.Predict(x), p.k.Predict(x))
 }
 
 // RangeError says that an index was asked for outside the range of a material.
@@ -75,24 +101,31 @@ type RangeError struct {
 }
 
 func (e *RangeError) Error() string {
-	return fmt.Sprintf("material %s: refractive index needed at %.4g um, but known from %.4g um to %.4g um only",
+	return fmt.Sprintf("material %s: refractive index needed at %.6g um, but known from %.6g um to %.6g um only",
 		e.Material, e.Wavelength*1e6, e.MinWavelength*1e6, e.MaxWave*1e6)
 }
 
-// Index returns the complex refractive index m = n + ik [1] at a wavelength in vacuum [m].
-// Between DataMin and DataMax it is the fitted curve or the table (linear in ln lambda);
-// beyond, the continuation that FitNote names. Error: a [*RangeError] outside
-// MinWavelength..MaxWavelength, and for a wavelength that is not a number.
-func (m *Material) Index(wavelength float64) (complex128, error) {
+// Axes returns the optical axes: one for most materials. The caller must not change them.
+func (m *Material) Axes() []Axis { return m.axes }
+
+// Index is [Material.IndexAlong] the first axis: of most materials the only one, of a crystal
+// with two the ordinary one.
+func (m *Material) Index(wavelength float64) (complex128, error) { return m.IndexAlong(0, wavelength) }
+
+// IndexAlong returns the complex refractive index m = n + ik [1] along one of [Material.Axes] at
+// a wavelength in vacuum [m]. Between DataMin and DataMax it is the fitted curve or the table
+// (linear in ln lambda); beyond, the continuation that FitNote names. Error: a [*RangeError]
+// outside MinWavelength..MaxWavelength, and for a wavelength that is not a number; an axis
+// that the material does not have.
+func (m *Material) IndexAlong(axis int, wavelength float64) (complex128, error) {
 	const slack = 1e-9 // relative: band edges computed from wavenumbers carry rounding
 	if !(wavelength >= m.MinWavelength*(1-slack) && wavelength <= m.MaxWavelength*(1+slack)) {
 		return 0, &RangeError{m.Name, wavelength, m.MinWavelength, m.MaxWavelength}
 	}
-	if wavelength > m.DataMax && m.tail != nil {
-		return m.tail.index(wavelength), nil
+	if axis < 0 || axis >= len(m.axes) {
+		return 0, fmt.Errorf("material %s: axis %d is outside 0 to %d", m.Name, axis, len(m.axes)-1)
 	}
-	x := math.Log(min(max(wavelength, m.DataMin), m.DataMax))
-	return complex(m.n.Predict(x), m.k.Predict(x)), nil
+	return m.axes[axis].law.index(wavelength), nil
 }
 
 // HeldShare returns the share [1] of the blackbody emission at temperature T [K] that
@@ -104,10 +137,10 @@ func (m *Material) HeldShare(temperature float64) float64 {
 		return 0
 	}
 	share := 0.0
-	if m.MinWavelength < m.DataMin {
+	if m.heldBelow {
 		share += planck.Fraction(m.DataMin, temperature)
 	}
-	if m.MaxWavelength > m.DataMax && m.tail == nil {
+	if m.heldAbove {
 		share += 1 - planck.Fraction(m.DataMax, temperature)
 	}
 	return share

@@ -21,8 +21,9 @@ const csvHeader = "wavelength_um,n,k"
 
 // ParseCSV reads a table of refractive index: the header line wavelength_um,n,k, then one
 // line per wavelength [um] in rising order; blank lines and lines starting with # are
-// skipped. Errors carry the line number: no header, wrong number of columns, not a number, not
-// finite, wavelength or n not positive, k negative, not rising, fewer than two rows.
+// skipped. Errors carry the line number and the value: no header, wrong number of columns, not a
+// number, wavelength outside 1 nm to 10 m, n outside 1e-4 to 1e6, k outside 0 to 1e6, not
+// rising, fewer than two rows.
 func ParseCSV(r io.Reader) ([]Row, error) {
 	return parse(r, true, func(line string) []string { return strings.Split(line, ",") })
 }
@@ -51,7 +52,7 @@ func parse(r io.Reader, header bool, split func(string) []string) ([]Row, error)
 		}
 		row, err := parseRow(split(line))
 		if err == nil && len(rows) > 0 && row.Wavelength <= rows[len(rows)-1].Wavelength {
-			err = fmt.Errorf("wavelength %g um is not above the %g um before it", row.Wavelength*1e6, rows[len(rows)-1].Wavelength*1e6)
+			err = fmt.Errorf("wavelength %.6g um is not above the %.6g um before it", row.Wavelength*1e6, rows[len(rows)-1].Wavelength*1e6)
 		}
 		if err != nil {
 			return nil, fmt.Errorf("line %d: %w", number, err)
@@ -74,7 +75,9 @@ func parseRow(fields []string) (Row, error) {
 	var v [3]float64
 	for i, f := range fields {
 		x, err := strconv.ParseFloat(strings.TrimSpace(f), 64)
-		if err != nil {
+		if errors.Is(err, strconv.ErrRange) {
+			return Row{}, fmt.Errorf("%.40q is too large; %s", strings.TrimSpace(f), rowRanges)
+		} else if err != nil {
 			return Row{}, fmt.Errorf("%.40q is not a number", strings.TrimSpace(f))
 		}
 		v[i] = x
@@ -83,19 +86,26 @@ func parseRow(fields []string) (Row, error) {
 	return row, row.check()
 }
 
+// Limits of a [Row]: wavelength [m], n and k [1]; those of the scattering series.
+const (
+	minTableWavelength, maxTableWavelength = 1e-9, 10
+	minTableIndex, maxTableIndex           = 1e-4, 1e6
+)
+
+// rowRanges says them.
+const rowRanges = "want wavelengths of 0.001 um to 1e+07 um, n of 0.0001 to 1e+06, k of 0 to 1e+06"
+
 func (r Row) check() error {
-	for _, v := range []float64{r.Wavelength, r.N, r.K} {
-		if math.IsNaN(v) || math.IsInf(v, 0) {
-			return errors.New("a value is not finite")
-		}
-	}
+	const slack = 1e-9
 	switch {
-	case r.Wavelength <= 0:
-		return fmt.Errorf("wavelength %g um is not positive", r.Wavelength*1e6)
-	case r.N <= 0:
-		return fmt.Errorf("n = %g is not positive", r.N)
+	case !(r.Wavelength >= minTableWavelength*(1-slack) && r.Wavelength <= maxTableWavelength*(1+slack)):
+		return fmt.Errorf("wavelength %.6g um is outside 0.001 um to 1e+07 um", r.Wavelength*1e6)
+	case !(r.N >= minTableIndex && r.N <= maxTableIndex):
+		return fmt.Errorf("n = %.6g is outside 0.0001 to 1e+06", r.N)
 	case r.K < 0:
-		return fmt.Errorf("k = %g is negative; with exp(-i omega t) absorption is k > 0", r.K)
+		return fmt.Errorf("k = %.6g is negative; want 0 to 1e+06: with exp(-i omega t) absorption is k > 0", r.K)
+	case !(r.K <= maxTableIndex):
+		return fmt.Errorf("k = %.6g is outside 0 to 1e+06", r.K)
 	}
 	return nil
 }
@@ -111,7 +121,7 @@ func NewTable(name string, density float64, rows []Row, extend bool) (*Material,
 		return nil, errors.New("material table has no name")
 	}
 	if !(density > 0) || math.IsInf(density, 0) {
-		return nil, fmt.Errorf("material %s: density %g kg/m3 must be positive", name, density)
+		return nil, fmt.Errorf("material %s: density %g kg/m3 is outside 0 to infinity, both excluded", name, density)
 	}
 	if len(rows) < 2 {
 		return nil, fmt.Errorf("material %s: table has %d rows; at least 2 are needed", name, len(rows))
@@ -125,7 +135,7 @@ func NewTable(name string, density float64, rows []Row, extend bool) (*Material,
 		}
 		x[i], n[i], k[i] = math.Log(r.Wavelength), r.N, r.K
 		if i > 0 && !(x[i] > x[i-1]) {
-			return nil, fmt.Errorf("material %s: row %d: wavelength %g um is not above the one before it", name, i+1, r.Wavelength*1e6)
+			return nil, fmt.Errorf("material %s: row %d: wavelength %.6g um is not above the %.6g um before it", name, i+1, r.Wavelength*1e6, rows[i-1].Wavelength*1e6)
 		}
 	}
 	var nn, kk interp.PiecewiseLinear
@@ -133,22 +143,23 @@ func NewTable(name string, density float64, rows []Row, extend bool) (*Material,
 		return nil, fmt.Errorf("material %s: %w", name, err)
 	}
 	first, last := rows[0], rows[len(rows)-1]
+	static := math.Max(1, last.N*last.N-last.K*last.K)
+	if last.K > last.N {
+		static = math.Inf(1)
+	}
 	m := &Material{
 		Name: name, Density: density, Source: "user's table",
 		MinWavelength: first.Wavelength, MaxWavelength: last.Wavelength,
 		DataMin: first.Wavelength, DataMax: last.Wavelength,
-		FitNote:            "linear in ln(wavelength) between rows",
-		Conducts:           Unknown,
-		Combustible:        Unknown,
-		StaticPermittivity: math.Max(1, last.N*last.N-last.K*last.K),
-		n:                  &nn, k: &kk,
-	}
-	if last.K > last.N {
-		m.StaticPermittivity = math.Inf(1)
+		FitNote:     "linear in ln(wavelength) between rows",
+		Conducts:    Unknown,
+		Combustible: Unknown,
+		axes: []Axis{{Weight: 1, StaticPermittivity: static,
+			law: &points{n: &nn, k: &kk, first: first.Wavelength, last: last.Wavelength}}},
 	}
 	if extend {
-		m.MinWavelength = math.Min(m.MinWavelength, 1e-9)
-		m.MaxWavelength = math.Max(m.MaxWavelength, 10)
+		m.MinWavelength, m.MaxWavelength = minTableWavelength, maxTableWavelength
+		m.heldBelow, m.heldAbove = first.Wavelength > m.MinWavelength, last.Wavelength < m.MaxWavelength
 		m.FitNote += "; end values held outside the rows"
 	}
 	return m, nil

@@ -76,9 +76,14 @@ func TestParse_errors(t *testing.T) {
 		{head + "1,1.5,0\n1,1.5,0\n", "line 3: wavelength 1 um is not above"},
 		{head + "1,0,0\n2,1,0\n", "line 2: n = 0"},
 		{head + "1,1,-0.1\n2,1,0\n", "line 2: k = -0.1"},
-		{head + "1,NaN,0\n2,1,0\n", "line 2: a value is not finite"},
+		{head + "1,NaN,0\n2,1,0\n", "line 2: n = NaN is outside 0.0001 to 1e+06"},
+		{head + "1,1,0\n49.99999999999999,1,0\n49.9,1,0\n", "line 4: wavelength 49.9 um is not above the 50 um before it"},
+		{head + "1,1,1e999\n2,1,0\n", "line 2: \"1e999\" is too large; want"},
+		{head + "1,1,Inf\n2,1,0\n", "line 2: k = +Inf is outside 0 to 1e+06"},
+		{head + "0,1,0\n2,1,0\n", "line 2: wavelength 0 um is outside 0.001 um to 1e+07 um"},
+		{head + "NaN,1,0\n2,1,0\n", "line 2: wavelength NaN um is outside"},
 		{head + "-1,1,0\n2,1,0\n", "line 2: wavelength -1 um"},
-		{head + "1,1,0\n", "1 rows"},
+		{head + "1,1,0\n", "1 rows of wavelength, n, k; at least 2"},
 		{"", "0 rows"},
 	} {
 		if _, err := ParseCSV(strings.NewReader(c.text)); err == nil || !strings.Contains(err.Error(), c.want) {

@@ -1,12 +1,48 @@
 package material
 
 import (
+	"fmt"
 	"math"
 	"math/cmplx"
 )
 
 // freeSpaceImpedance is the impedance of vacuum [ohm], CODATA 2018.
 const freeSpaceImpedance = 376.730313668
+
+// beyond says how an index goes on past its last measured point: the law from there, the
+// permittivity it tends to (+Inf for a conductor), and what the catalogue says about it.
+type beyond struct {
+	law                func(join float64, m complex128) law
+	staticPermittivity float64
+	text               string
+}
+
+// conductor goes on to a direct-current resistivity [ohm m].
+func conductor(dc float64) beyond {
+	return beyond{
+		law:                func(join float64, m complex128) law { return newDrudeTail(join, m, dc) },
+		staticPermittivity: math.Inf(1),
+		text:               fmt.Sprintf("Drude law to the direct-current resistivity %.3g ohm m", dc),
+	}
+}
+
+// insulator goes on to a static permittivity [1].
+func insulator(permittivity float64) beyond {
+	return beyond{
+		law:                func(join float64, m complex128) law { return newWingTail(join, m, permittivity) },
+		staticPermittivity: permittivity,
+		text:               fmt.Sprintf("far wing of the resonances to the static permittivity %.4g", permittivity),
+	}
+}
+
+// ice goes on by [Hufford1991].
+func ice() beyond {
+	return beyond{
+		law:                func(join float64, m complex128) law { return newIceTail(join, m) },
+		staticPermittivity: icePermittivity,
+		text:               "permittivity 3.17 and a published microwave loss",
+	}
+}
 
 // drudeTail continues a conductor from its last measured point to radio wavelengths. The
 // complex resistivity of the polarisation current, rho = i lambda eta/(2 pi (m^2 - 1)),
@@ -30,11 +66,46 @@ func newDrudeTail(join float64, m complex128, dc float64) *drudeTail {
 func (t *drudeTail) index(wavelength float64) complex128 {
 	r := t.join / wavelength
 	rho := complex(t.dc+(real(t.rho)-t.dc)*r*r, imag(t.rho)*r)
-	m := cmplx.Sqrt(1 + complex(0, wavelength*freeSpaceImpedance/(2*math.Pi))/rho)
+	return upper(cmplx.Sqrt(1 + complex(0, wavelength*freeSpaceImpedance/(2*math.Pi))/rho))
+}
+
+// drudeLine is a free-electron metal of plasma wavenumber and damping [1/m]:
+//
+//	m^2 = 1 - plasma^2/(nu^2 + i nu damping),   nu = 1/lambda
+type drudeLine struct {
+	plasma, damping float64
+}
+
+func (d drudeLine) index(wavelength float64) complex128 {
+	nu := 1 / wavelength
+	return upper(cmplx.Sqrt(1 - complex(d.plasma*d.plasma, 0)/complex(nu*nu, nu*d.damping)))
+}
+
+// upper returns the one of m and -m that absorbs.
+func upper(m complex128) complex128 {
 	if imag(m) < 0 {
-		m = -m
+		return -m
 	}
 	return m
+}
+
+// wingTail continues an insulator as the far wing of its lattice resonances: the permittivity
+// eps_join at the join moves to the static one,
+//
+//	eps = eps_0 + (Re eps_join - eps_0)(join/lambda)^2 + i Im eps_join (join/lambda)
+type wingTail struct {
+	join   float64
+	eps    complex128
+	static float64
+}
+
+func newWingTail(join float64, m complex128, static float64) *wingTail {
+	return &wingTail{join: join, eps: m * m, static: static}
+}
+
+func (t *wingTail) index(wavelength float64) complex128 {
+	r := t.join / wavelength
+	return cmplx.Sqrt(complex(t.static+(real(t.eps)-t.static)*r*r, imag(t.eps)*r))
 }
 
 // iceTail continues water-ice at 266 K from the last measured point to radio wavelengths:
