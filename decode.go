@@ -250,15 +250,10 @@ func (l *loader) particle(n *node, path string) Particle {
 // checkSpread refuses a spread whose outermost sizes the stages do not take. Particles that
 // they do not take anyhow are left to the mistakes of their own.
 func (l *loader) checkSpread(n *node, p Particle, path string) {
-	m, err := materialOf(p.Material)
-	if err != nil || !n.has("spread") {
+	if !n.has("spread") {
 		return
 	}
-	described, err := opticsParticle(p, m)
-	if err != nil {
-		return
-	}
-	sizes, err := optics.NewPopulation(described)
+	sizes, err := opticsOf(p)
 	if err != nil {
 		return
 	}

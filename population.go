@@ -108,40 +108,36 @@ func materialOf(m MaterialRef) (*material.Material, error) {
 	return material.NewTable(m.Name, m.Density, rows, m.Extend)
 }
 
-// opticsParticle describes a population to the optics, with the material's own oxide skin
-// where the study gives none.
-func opticsParticle(q Particle, m *material.Material) (optics.Particle, error) {
-	oxide := q.Oxide
-	if oxide < 0 { // not given
-		oxide = m.DefaultOxide
+// opticsOf returns a population as the optics have it, with the material's own oxide skin
+// where the study gives none; its Particle has material, core and skin as used.
+func opticsOf(q Particle) (*optics.Population, error) {
+	m, err := materialOf(q.Material)
+	if err != nil {
+		return nil, err
 	}
-	out := optics.Particle{Shape: q.Shape, Radius: q.Radius, Length: q.Length, Diameter: q.Diameter, Wall: q.Wall,
-		Oxide: oxide, Spread: q.Spread, SurfaceScattering: q.SurfaceScattering, Material: m}
+	p := optics.Particle{Shape: q.Shape, Radius: q.Radius, Length: q.Length, Diameter: q.Diameter, Wall: q.Wall,
+		Oxide: q.Oxide, Spread: q.Spread, SurfaceScattering: q.SurfaceScattering, Material: m}
+	if q.Oxide < 0 { // not given
+		p.Oxide = m.DefaultOxide
+	}
 	if q.Core != "" {
-		var err error
-		if out.Core, err = material.ByName(q.Core); err != nil {
-			return optics.Particle{}, fmt.Errorf("core: %w", err)
+		if p.Core, err = material.ByName(q.Core); err != nil {
+			return nil, fmt.Errorf("core: %w", err)
 		}
 	}
-	return out, nil
+	return optics.NewPopulation(p)
 }
 
 // newPopulation works out the optics of a particle; planckTemperature is that of the
 // thermal means [K].
 func newPopulation(q Particle, planckTemperature float64) (*population, error) {
-	m, err := materialOf(q.Material)
+	o, err := opticsOf(q)
 	if err != nil {
 		return nil, err
 	}
-	described, err := opticsParticle(q, m)
-	if err != nil {
-		return nil, err
-	}
-	o, err := optics.NewPopulation(described)
-	if err != nil {
-		return nil, err
-	}
-	p := &population{Particle: q, optics: o, material: m, core: described.Core, oxide: described.Oxide, density: m.Density, meanMass: o.MeanMass(), volatile: m.Volatile}
+	used := o.Particle()
+	m := used.Material
+	p := &population{Particle: q, optics: o, material: m, core: used.Core, oxide: used.Oxide, density: m.Density, meanMass: o.MeanMass(), volatile: m.Volatile}
 	for _, light := range []struct {
 		name        string
 		temperature float64

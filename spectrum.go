@@ -116,19 +116,11 @@ func (e *Engine) Spectrum(ctx context.Context, s *Study, design string, waveleng
 	}
 	progress := newCount(e.options.Progress, "wavelengths", len(wavelengths)*len(d.Particles))
 	for i, q := range d.Particles {
-		m, err := materialOf(q.Material)
+		o, err := opticsOf(q)
 		if err != nil {
 			return nil, err
 		}
-		described, err := opticsParticle(q, m)
-		if err != nil {
-			return nil, err
-		}
-		o, err := optics.NewPopulation(described)
-		if err != nil {
-			return nil, err
-		}
-		pop := aboutPopulation(d, i, m, o)
+		pop := aboutPopulation(d, i, o)
 		if pop.Rows, err = spectrumRows(ctx, o, wavelengths, e.options.Workers, progress); err != nil {
 			if ctx.Err() != nil {
 				return nil, ctx.Err()
@@ -137,7 +129,8 @@ func (e *Engine) Spectrum(ctx context.Context, s *Study, design string, waveleng
 		}
 		out.Populations = append(out.Populations, pop)
 		for _, ref := range materialsOf(q) {
-			if m, err = materialOf(ref); err != nil {
+			m, err := materialOf(ref)
+			if err != nil {
 				return nil, err
 			}
 			if w, held := heldIndex(m, wavelengths); held > 0 {
@@ -211,8 +204,9 @@ func materialsOf(q Particle) []MaterialRef {
 }
 
 // aboutPopulation returns the i-th population of a design without its rows.
-func aboutPopulation(d *Design, i int, m *material.Material, o *optics.Population) SpectrumPopulation {
+func aboutPopulation(d *Design, i int, o *optics.Population) SpectrumPopulation {
 	q, used := d.Particles[i], o.Particle()
+	m := used.Material
 	out := SpectrumPopulation{
 		Particle: q, Name: describe(q), Density: m.Density, Mass: o.MeanMass(),
 		OxideUsed: used.Oxide, OxideGiven: q.Oxide >= 0,

@@ -6,7 +6,6 @@ import (
 	"strconv"
 	"strings"
 
-	"hazewright/optics"
 	"hazewright/optics/greenhouse"
 )
 
@@ -46,17 +45,11 @@ func checked(ctx context.Context, s *Study) (*planet, error) {
 // checkParticle holds one population against the optics: sizes, spread, skin, and a
 // material known at every wavelength that is needed.
 func checkParticle(q Particle) error {
-	m, err := materialOf(q.Material)
+	o, err := opticsOf(q)
 	if err != nil {
 		return err
 	}
-	described, err := opticsParticle(q, m)
-	if err != nil {
-		return err
-	}
-	if _, err := optics.NewPopulation(described); err != nil {
-		return err
-	}
+	m := o.Particle().Material
 	thermal, solar := greenhouse.ThermalEdges(), greenhouse.SolarEdges()
 	_, short := m.Index(solar[0])
 	_, long := m.Index(thermal[len(thermal)-1])
