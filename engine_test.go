@@ -18,9 +18,13 @@ func studyOf(t testing.TB, text string, sets ...string) *Study {
 	return s
 }
 
+// remembering is an engine that the tests share: what it remembers of particles must not
+// change an answer, see TestSameAnswerForAnyWorkersAndMemory.
+var remembering = NewEngine(Options{})
+
 func assess(t testing.TB, s *Study) *Result {
 	t.Helper()
-	r, err := NewEngine(Options{}).Assess(context.Background(), s)
+	r, err := remembering.Assess(context.Background(), s)
 	if err != nil {
 		t.Fatal(err)
 	}
