@@ -201,6 +201,10 @@ func unknownKey(s *schema, key string) problem {
 	if s == studySchema().child("goal") && outsideScope(key) {
 		return problem{what: "is outside the scope of this program", hint: "goals are for the whole planet and the annual mean: no latitude, season, region or phased area"}
 	}
+	if strings.Contains(key, " ") { // no key has one
+		p.hint = "a text with a comma in it needs quotation marks"
+		return p
+	}
 	keys := s.keys()
 	if near := Nearest(key, keys); near != "" {
 		p.hint = fmt.Sprintf("did you mean %q?", near)

@@ -151,10 +151,6 @@ func (f *facts) supplyChain(p *planet) error {
 	if f.noBurden != "" {
 		return nil
 	}
-	if f.state.Warming <= 0 {
-		f.noProgramme = fmt.Sprintf("no programme: the burden does not warm (%s)", FormatSI(f.state.Warming, "K", 3))
-		return nil
-	}
 	if err := f.release(p); err != nil {
 		f.noProgramme = "no programme: " + err.Error()
 		return nil

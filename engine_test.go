@@ -71,6 +71,9 @@ var mayBeNull = map[string]string{
 	"agglomeration_time": "nothing sticks",
 	"sublimation_time":   "the material does not sublime",
 	"ore_rate":           "shipped particles need no ore on the planet",
+	"ground_store":       "a given lifetime leaves the ground uncomputed",
+	"residence_total":    "the same",
+	"cycles":             "the same",
 	"time_to_goal":       "the schedule may never get there",
 	"half_loss_time":     "half of the warming may never be lost within reach",
 	"radio_loss_uhf":     "a user's table may not reach radio wavelengths",
@@ -81,7 +84,14 @@ var mayBeNull = map[string]string{
 
 func TestEveryFigureHasAValueOrAnAllowedReason(t *testing.T) {
 	r := assess(t, example(t))
-	for _, d := range r.Designs {
+	all := r.Designs
+	for _, sets := range [][]string{
+		{"designs[0].given={lifetime: 3 yr}"}, {"supply.route=shipped"}, {"goal={burden: 40 mg/m2}"},
+		{"designs[0].particles[0]={shape: sphere, radius: 0.25 um, material: graphite}", "goal={optical_depth: 0.1, at: solar}"},
+	} {
+		all = append(all, assess(t, studyOf(t, ironRods, sets...)).Designs...)
+	}
+	for _, d := range all {
 		if len(d.Figures) != len(Figures()) {
 			t.Errorf("%s: %d figures, the table has %d", d.Name, len(d.Figures), len(Figures()))
 		}

@@ -45,12 +45,13 @@ type fateFacts struct {
 	usedSurvival float64 // share that survives the plume, as production is sized
 }
 
-// agglomerationRate returns the loss of airborne mass by meetings [1/s].
+// agglomerationRate returns the loss of airborne mass by meetings [1/s]; of a fixed layer
+// only the mass inside is airborne, while meetings go on in the whole column.
 func (s *fateFacts) agglomerationRate() float64 {
 	if !s.Agglomerates {
 		return 0
 	}
-	return 1 / s.AgglomerationTime
+	return 1 / (s.AgglomerationTime * s.inPlace)
 }
 
 // mixMeans are share-weighted means of a design per kilogram [m2/kg].

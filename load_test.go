@@ -89,6 +89,7 @@ func TestLoad_Mistakes(t *testing.T) {
 		// Keys and shapes of the tree.
 		{"unknown key", with("diameter:", "diametre:"), []string{
 			`s.yaml:6:36: designs[Iron rods].particles[0].diametre: is an unknown key; did you mean "diameter"?`}},
+		{"comma in a bare text", smallStudy + "benchmarks: [{design: Iron rods, as printed, figure: burden, value: 150 mg/m2, source: S}]\n", []string{"s.yaml:7:34: benchmarks[0].as printed: is an unknown key; a text with a comma in it needs quotation marks"}},
 		{"key in capitals", with("study:", "Study:"), []string{`s.yaml:1:1: Study: is an unknown key; did you mean "study"?`}},
 		{"look-alike beside the key", "STUDY: A\n" + smallStudy, []string{`s.yaml:1:1: STUDY: is an unknown key; did you mean "study"?`}},
 		{"key of another section", smallStudy + "fate: {specific_mass: 3 t}\n", []string{"s.yaml:7:8: fate.specific_mass: is an unknown key; it belongs under supply.plant or supply.power"}},

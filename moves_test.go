@@ -118,6 +118,19 @@ func TestFixedLayerCountsOnlyWhatIsInside(t *testing.T) {
 	if got, want := value(t, layered, "inventory")/supply, value(t, layered, "lifetime"); math.Abs(got/want-1) > 1e-6 {
 		t.Errorf("lifetime %g s by the schedule's stores, %g s by the column", got, want)
 	}
+	// A loss that takes a share x of what is removed would alone give lifetime/x; agglomeration's
+	// time is its own.
+	for _, sets := range [][]string{nil, {"fate.release_height=30 km", "fate.profile={layer: [20 km, 30 km]}"}} {
+		d := assess(t, studyOf(t, ironRods, append([]string{"fate.sticking=5 %"}, sets...)...)).Designs[0]
+		for _, l := range d.Losses {
+			if l.Name != "agglomeration" {
+				continue
+			}
+			if got, want := l.Share*value(t, d, "agglomeration_time"), value(t, d, "lifetime"); math.Abs(got/want-1) > 1e-6 {
+				t.Errorf("%v: agglomeration removes %g of all in %g s, lifetime %g s", sets, l.Share, value(t, d, "agglomeration_time"), want)
+			}
+		}
+	}
 	out := assess(t, studyOf(t, ironRods, "fate.release_height=0 km", "fate.eddy_diffusivity=1 m2/s", "fate.lift_height=0 km", "fate.profile={layer: [60 km, 70 km]}")).Designs[0]
 	if out.Reached || !strings.Contains(out.Cause, "layer") {
 		t.Errorf("a layer that nothing gets to: reached %v, cause %q", out.Reached, out.Cause)
@@ -204,7 +217,7 @@ fate: {sticking: 0 %, charge: 5}
 	}
 }
 
-// A particle that only cools has its warming told under a burden goal, and no programme.
+// A particle that only cools has its warming and all that it takes told under a burden goal.
 func TestCoolingParticle(t *testing.T) {
 	const soot = `
 study: soot
@@ -221,8 +234,15 @@ limits:
 	if w := value(t, d, "warming"); !(w < 0) {
 		t.Errorf("soot warms by %g K", w)
 	}
-	if !d.Figures["production_rate"].Null || d.Programme != nil {
-		t.Error("a programme for a burden that cools")
+	warned := false
+	for _, w := range d.Warnings {
+		warned = warned || strings.Contains(w.Text, "does not warm")
+	}
+	if !warned {
+		t.Error("nothing says that the burden does not warm")
+	}
+	for _, id := range []string{"production_rate", "ore_rate", "power", "landed_mass"} {
+		value(t, d, id) // what it takes does not hang on whether it warms
 	}
 	if l := d.Limits[0]; !l.Known || l.Met {
 		t.Errorf("limit on warming: %+v", l)

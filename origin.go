@@ -3,6 +3,8 @@ package hazewright
 import (
 	"fmt"
 	"strings"
+
+	"hazewright/optics/material"
 )
 
 // position returns a place as messages print it.
@@ -101,7 +103,15 @@ func (c *inputCollector) collect(n *node, s *schema, path string, above sourceAb
 	switch n.kind {
 	case mapNode:
 		for _, child := range s.children {
-			c.collect(n.child(child.name), child, joinPath(path, child.name), source)
+			below := joinPath(path, child.name)
+			if n.child(child.name) == nil && child.row != nil && particleDefaults[child.row.Path] != nil {
+				if text := particleDefaults[child.row.Path](n); text != "" {
+					c.values = append(c.values, InputValue{Path: below, Text: text, Unit: child.row.Unit, Origin: Origin{Kind: "default"},
+						Source: firstOf(c.userSource(below), source.user, child.row.Source), Title: child.row.Title})
+				}
+				continue
+			}
+			c.collect(n.child(child.name), child, below, source)
 		}
 	case listNode:
 		if len(n.items) == 0 {
@@ -113,6 +123,24 @@ func (c *inputCollector) collect(n *node, s *schema, path string, above sourceAb
 	default:
 		c.add(n, s, path, n.text, source)
 	}
+}
+
+// particleDefaults give the effective text of what a particle leaves out and its shape or
+// material decides; "" where the particle has no such thing.
+var particleDefaults = map[string]func(particle *node) string{
+	"designs[].particles[].core": func(p *node) string {
+		if p.word("shape") == "shell" {
+			return hollow
+		}
+		return ""
+	},
+	"designs[].particles[].oxide": func(p *node) string {
+		m, err := material.ByName(p.word("material"))
+		if err != nil {
+			return "0 nm"
+		}
+		return FormatSI(m.DefaultOxide, "nm", 3)
+	},
 }
 
 // inDesign reports whether path lies in a design's own fate or supply.

@@ -264,10 +264,10 @@ func TestFormatSI(t *testing.T) {
 }
 
 func TestNearest(t *testing.T) {
-	keys := []string{"length", "diameter", "burial_time", "at"}
+	keys := []string{"length", "diameter", "burial_time", "at", "ore_rate", "production_rate"}
 	for _, c := range []struct{ word, want string }{
 		{"lenght", "length"}, {"Length", "length"}, {"burial-time", "burial_time"}, {"burial", "burial_time"},
-		{"diametre", "diameter"}, {"temperature", ""}, {"", ""}, {"zz", ""}, {strings.Repeat("length", 20), ""},
+		{"diametre", "diameter"}, {"temperature", ""}, {"", ""}, {"zz", ""}, {"prod_rate", "production_rate"}, {"or_rate", "ore_rate"}, {strings.Repeat("length", 20), ""},
 	} {
 		if got := Nearest(c.word, keys); got != c.want {
 			t.Errorf("Nearest(%q) = %q, want %q", c.word, got, c.want)

@@ -2,7 +2,7 @@ package hazewright
 
 import "strings"
 
-// Nearest returns the candidate closest to word by edit distance, else one that word
+// Nearest returns the candidate that word abbreviates part by part, else the one closest to it by edit distance, else one that word
 // begins or that begins word, or "" if none is close enough to be a slip. The first of
 // equals wins.
 func Nearest(word string, candidates []string) string {
@@ -13,6 +13,9 @@ func Nearest(word string, candidates []string) string {
 	folded := strings.ToLower(strings.ReplaceAll(word, "-", "_"))
 	best, bestDistance := "", 1+max(1, len(word)/3)
 	for _, c := range candidates {
+		if abbreviates(folded, c) {
+			return c
+		}
 		if d := editDistance(folded, strings.ToLower(c)); d < bestDistance {
 			best, bestDistance = c, d
 		}
@@ -25,6 +28,21 @@ func Nearest(word string, candidates []string) string {
 		}
 	}
 	return best
+}
+
+// abbreviates reports whether every part of word, between underscores, begins the same
+// part of full: "prod_rate" for "production_rate".
+func abbreviates(word, full string) bool {
+	short, long := strings.Split(word, "_"), strings.Split(full, "_")
+	if len(short) != len(long) || len(short) < 2 {
+		return false
+	}
+	for i := range short {
+		if len(short[i]) < 2 || !strings.HasPrefix(long[i], short[i]) {
+			return false
+		}
+	}
+	return true
 }
 
 // editDistance counts insertions, deletions, substitutions and swaps of neighbours

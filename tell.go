@@ -69,6 +69,9 @@ func (f *facts) caseWarnings() []Warning {
 	if f.noProgramme != "" {
 		return append(out, Warning{"supply", f.noProgramme})
 	}
+	if f.state.Warming <= 0 {
+		out = append(out, Warning{"warming", "the burden does not warm: the schedule counts the way to its " + FormatSI(f.state.Warming, "K", 3)})
+	}
 	for _, w := range f.programme.Warnings {
 		out = append(out, Warning{w.Field, w.Text})
 	}
@@ -203,7 +206,7 @@ func (f *facts) losses() []Loss {
 			out[k].Share += l.Rate
 			total += l.Rate
 			if l.Acts {
-				inverse[l.Name] += f.populations[i].Share / l.LifetimeAlone
+				inverse[l.Name] += f.populations[i].Share / (l.LifetimeAlone * s.inPlace)
 			}
 		}
 	}

@@ -24,6 +24,7 @@ type File struct {
 //	designs.csv        one row for each design and sticking case, all figures as columns
 //	figures.csv        the same, one row for each figure, with its note or why it is missing
 //	limits.csv         limits held against each design and case
+//	benchmarks.csv     the study's published numbers, with the ratio of ours to them
 //	losses.csv         loss budget of each design and case
 //	gates.csv          cautions and gates
 //	warming_curve.csv  warming against burden, placed as the study says and held low
@@ -44,6 +45,7 @@ func CSV(r *hazewright.Result) ([]File, error) {
 		{"designs.csv", designsHeader(), designsRows},
 		{"figures.csv", []string{"design", "case", "figure", "value", "unit", "note", "why"}, figuresRows},
 		{"limits.csv", []string{"design", "case", "figure", "side", "bound", "unit", "met", "factor"}, limitsRows},
+		{"benchmarks.csv", []string{"design", "figure", "value", "unit", "ratio", "source"}, benchmarksRows},
 		{"losses.csv", []string{"design", "case", "loss", "share [1]", "lifetime_alone [s]"}, lossesRows},
 		{"gates.csv", []string{"design", "gate", "title", "state", "finding", "next_step", "source"}, gatesRows},
 		{"warming_curve.csv", []string{"design", "placed", "burden [kg/m2]", "warming [K]", "sunlight_loss [1]", "valid"}, curveRows},
@@ -152,6 +154,20 @@ func limitsRows(r *hazewright.Result, out *rows) {
 				ratio = *l.Factor
 			}
 			out.add(v.Name, v.name, l.Figure, l.Side, l.Bound, l.Unit, met, ratio)
+		}
+	}
+}
+
+func benchmarksRows(r *hazewright.Result, out *rows) {
+	for i := range r.Designs {
+		d := &r.Designs[i]
+		for _, b := range benchmarks(r, d) {
+			def, _ := hazewright.FigureByID(b.Figure)
+			var ratio any
+			if b.ratio != 0 {
+				ratio = b.ratio
+			}
+			out.add(d.Name, b.Figure, b.Value, def.Unit, ratio, b.Source)
 		}
 	}
 }

@@ -177,7 +177,7 @@ func TestCSVFiles(t *testing.T) {
 			t.Errorf("%s has no rows", f.Name)
 		}
 	}
-	want := []string{"designs.csv", "figures.csv", "limits.csv", "losses.csv", "gates.csv", "warming_curve.csv", "spectrum.csv", "profile.csv", "schedule.csv", "warnings.csv", "inputs.csv"}
+	want := []string{"designs.csv", "figures.csv", "limits.csv", "benchmarks.csv", "losses.csv", "gates.csv", "warming_curve.csv", "spectrum.csv", "profile.csv", "schedule.csv", "warnings.csv", "inputs.csv"}
 	if diff := cmp.Diff(want, names); diff != "" {
 		t.Errorf("files (-want +got):\n%s", diff)
 	}

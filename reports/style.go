@@ -59,6 +59,13 @@ func wrap(s string, width int) []string {
 	if width <= 0 || columnsOf(s) <= width {
 		return []string{s}
 	}
+	if indent := len(s) - len(strings.TrimLeft(s, " ")); indent > 0 && indent < width {
+		lines := wrap(s[indent:], width-indent)
+		for i := range lines {
+			lines[i] = s[:indent] + lines[i]
+		}
+		return lines
+	}
 	var lines []string
 	line := ""
 	for _, word := range strings.Fields(s) {

@@ -24,6 +24,7 @@ func Table(w io.Writer, r *hazewright.Result, style Style) error {
 	t.verdicts()
 	t.figures()
 	t.limits()
+	t.benchmarks()
 	t.cases()
 	t.grid.write(out, style)
 	t.footer(out, style)
@@ -185,6 +186,31 @@ func (t *tableBuilder) limits() {
 				return gridCell{text: "not known"}
 			}
 			return limitCell(d.Limits[i], d.Figures)
+		})
+	}
+}
+
+// benchmarks adds a row for each published number of the study, with the ratio of ours to it.
+func (t *tableBuilder) benchmarks() {
+	if len(t.r.Study.Benchmarks) == 0 {
+		return
+	}
+	t.headingRow("Benchmarks: ours over the published number")
+	for _, b := range t.r.Study.Benchmarks {
+		def, ok := hazewright.FigureByID(b.Figure)
+		if !ok {
+			continue
+		}
+		t.row("  "+def.Title+" "+bare(b.Value, def.Shown), unitHead(def.Shown), func(d *hazewright.DesignResult) gridCell {
+			if b.Design != d.Name {
+				return gridCell{}
+			}
+			for _, own := range benchmarks(t.r, d) {
+				if own.Benchmark == b && own.ratio != 0 {
+					return gridCell{text: factor(own.ratio)}
+				}
+			}
+			return gridCell{text: "-"}
 		})
 	}
 }

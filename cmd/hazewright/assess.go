@@ -173,8 +173,8 @@ func (p *prepared) add(t target, data []byte) {
 	p.files = append(p.files, file{t, data})
 }
 
-// deliver writes everything that was prepared: the files, all or none, then standard
-// output.
+// deliver writes everything that was prepared: standard output, then the files, all or
+// none.
 func (a *app) deliver(ctx context.Context, out prepared) error {
 	targets := make([]target, len(out.files))
 	for i, f := range out.files {
@@ -183,10 +183,11 @@ func (a *app) deliver(ctx context.Context, out prepared) error {
 	if err := distinct(out.inputs, targets...); err != nil {
 		return err // such as --json with the name of a file of --csv
 	}
-	if err := commit(ctx, out.folders, out.files); err != nil {
+	// Standard output first: a run that cannot print leaves no file behind.
+	if _, err := a.stdout.Write(out.stdout); err != nil {
 		return err
 	}
-	if _, err := a.stdout.Write(out.stdout); err != nil {
+	if err := commit(ctx, out.folders, out.files); err != nil {
 		return err
 	}
 	inFolder := map[string]int{}
