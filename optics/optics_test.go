@@ -444,7 +444,7 @@ func TestPopulation_properties(t *testing.T) {
 		d := log(2.001e-9, 5e-7, "diameter")
 		p := Particle{Shape: Rod, Diameter: d, Length: d * log(20, 300, "aspect"), Spread: rapid.Float64Range(1, 1.15).Draw(t, "spread"), Material: iron}
 		if rapid.Bool().Draw(t, "sphere") {
-			p = Particle{Shape: Sphere, Radius: log(1.001e-9, 1e-4, "radius"), Spread: rapid.Float64Range(1, 2).Draw(t, "spread"), Material: iron}
+			p = Particle{Shape: Sphere, Radius: log(1.001e-9, 2e-5, "radius"), Spread: rapid.Float64Range(1, 2).Draw(t, "spread"), Material: iron}
 		}
 		pop, err := NewPopulation(p)
 		if err != nil {

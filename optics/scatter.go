@@ -150,6 +150,10 @@ func (p Particle) balls(wavelength float64, m, mCore complex128, sizes []Node, o
 	return nil
 }
 
+// resonantFrom is the wavelength [m] from which long rods of good conductors ring end to end, so
+// that [rod.Standard] is not left at 8 wavelengths but solved up to 30.
+const resonantFrom = 3e-6
+
 // rods computes rods of index m.
 func (p Particle) rods(wavelength float64, m complex128, sizes []Node, out []CrossSection, t *tools) error {
 	core := p.Diameter - 2*p.Oxide
@@ -158,7 +162,11 @@ func (p Particle) rods(wavelength float64, m complex128, sizes []Node, out []Cro
 	}
 	work := t.workspaces.Get().(*rod.Workspace)
 	defer t.workspaces.Put(work)
-	section, err := work.Section(wavelength, core, m, t.options)
+	options := t.options
+	if options.Method == rod.Standard && wavelength >= resonantFrom {
+		options.Join = rod.ReferenceJoin
+	}
+	section, err := work.Section(wavelength, core, m, options)
 	if err != nil {
 		return err
 	}

@@ -448,3 +448,25 @@ func TestInternalImpedance_limits(t *testing.T) {
 		t.Errorf("series and Bessel form differ: ratio %g", r)
 	}
 }
+
+// A rod that absorbs nothing has a finite error whatever its length and method, and no
+// absorption.
+func TestRod_lossless(t *testing.T) {
+	for _, method := range []string{Standard, Reference, Fast} {
+		for _, wavelength := range []float64{0.5e-6, 1e-6, 3e-6, 20e-6} {
+			s, err := NewSection(wavelength, 160e-9, 1.5, Options{Method: method})
+			if err != nil {
+				t.Fatal(err)
+			}
+			for _, length := range []float64{2e-6, 9e-6, 40e-6} {
+				r, err := s.Rod(length)
+				if err != nil {
+					t.Fatal(err)
+				}
+				if math.IsNaN(r.Err) || math.IsInf(r.Err, 0) || r.Err <= 0 || !(r.Sca > 0) || r.Abs > 1e-9*r.Sca {
+					t.Errorf("%s, %g m at %g m: %+v", method, length, wavelength, r)
+				}
+			}
+		}
+	}
+}
