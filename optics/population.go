@@ -20,9 +20,10 @@ type Node struct {
 type Population struct {
 	particle Particle
 	nodes    []Node
-	mass     float64 // [kg], mean of one particle
-	area     float64 // [m2], mean projected area
-	volume   float64 // [m3], mean outer
+	rough    []float64 // weights of a second, rougher average over sizes, see roughWeights
+	mass     float64   // [kg], mean of one particle
+	area     float64   // [m2], mean projected area
+	volume   float64   // [m3], mean outer
 	tools    *tools
 }
 
@@ -100,7 +101,43 @@ func newPopulation(p Particle, count int) (*Population, error) {
 		return nil, fmt.Errorf("spread %g of length %.4g um puts %.2g %% of the mass below %d diameters (%.4g um), where the rod model does not hold; use a smaller spread or thinner rods",
 			p.Spread, p.Length*1e6, share*100, rod.MinAspect, rod.MinAspect*p.Diameter*1e6)
 	}
+	if len(pop.nodes) > 1 {
+		pop.rough = roughWeights(pop.nodes, median, s, p.Shape == Rod)
+	}
 	return pop, nil
+}
+
+// roughWeights returns the weights of the average over a log-normal spread that takes the
+// cross-section per volume as linear in ln(size) between the nodes and constant beyond
+// them. Where it departs from the Gauss-Hermite average the nodes do not resolve the
+// cross-section's dependence on size; s is the standard deviation of ln(size).
+func roughWeights(nodes []Node, median, s float64, rods bool) []float64 {
+	power := 3.0 // of the size in the volume
+	if rods {
+		power = 1
+	}
+	out := make([]float64, len(nodes))
+	const steps, reach = 2000, 8.0 // midpoint rule over +-8 standard deviations of number and of volume
+	from, to := -reach, reach+power*s
+	h := (to - from) / steps
+	at := 0
+	for i := range steps {
+		z := from + (float64(i)+0.5)*h
+		size := median * math.Exp(s*z)
+		number := h * math.Exp(-z*z/2) / math.Sqrt(2*math.Pi)
+		for at+1 < len(nodes) && nodes[at+1].Size < size {
+			at++
+		}
+		f := 0.0 // towards the next node
+		if at+1 < len(nodes) && size > nodes[at].Size {
+			f = math.Log(size/nodes[at].Size) / math.Log(nodes[at+1].Size/nodes[at].Size)
+		}
+		out[at] += number * (1 - f) * math.Pow(size/nodes[at].Size, power)
+		if f > 0 {
+			out[at+1] += number * f * math.Pow(size/nodes[at+1].Size, power)
+		}
+	}
+	return out
 }
 
 // Particle returns the description the population was made from.
@@ -122,8 +159,9 @@ func (p *Population) Density() float64 { return p.mass / p.volume }
 func (p *Population) MeanProjectedArea() float64 { return p.area }
 
 // At returns the number-mean cross-sections of one particle at a wavelength in vacuum [m]. G is
-// weighted with scattering, Err with extinction; Method is that of the size class that
-// contributes most extinction. Errors: the material's range, or a size the method does not take.
+// weighted with scattering, Err with extinction, with what the average over sizes leaves
+// unresolved added (a few per cent near sharp resonances, of weak absorbers more; means over a
+// spectrum lose far less); Method is that of the size class that contributes most extinction. Errors: the material's range, or a size the method does not take.
 func (p *Population) At(wavelength float64) (CrossSection, error) {
 	var buffer [48]CrossSection
 	each := buffer[:0]
@@ -138,7 +176,32 @@ func (p *Population) At(wavelength float64) (CrossSection, error) {
 	for i, n := range p.nodes {
 		sum.add(n.Number, each[i])
 	}
-	return sum.over(), nil
+	c := sum.over()
+	c.Err += p.unresolved(each, c)
+	return c, nil
+}
+
+// unresolved returns the relative error of the average over sizes: what a rougher average
+// makes of extinction or absorption, whichever is more, at most 1. It tells the size of the
+// error, not a bound: the truth is within three times it at 95 % of wavelengths. It is zero
+// for particles of one size.
+func (p *Population) unresolved(each []CrossSection, c CrossSection) float64 {
+	if p.rough == nil {
+		return 0
+	}
+	var ext, abs float64
+	for i, w := range p.rough {
+		ext += w * each[i].Ext
+		abs += w * each[i].Abs
+	}
+	e := 0.0
+	if c.Ext > 0 {
+		e = math.Abs(ext/c.Ext - 1)
+	}
+	if c.Abs > 0 {
+		e = max(e, math.Abs(abs/c.Abs-1))
+	}
+	return min(e, 1)
 }
 
 // Means holds mass-specific means [m2/kg]: absorption, extinction, scattering, and scattering
