@@ -40,7 +40,7 @@ func newPlanet(s *Study) (*planet, error) {
 	p := &planet{study: s, quick: quick, column: column, area: 4 * math.Pi * w.Radius * w.Radius}
 	p.base = Baseline{
 		SurfaceTemperature: bare.SurfaceTemperature,
-		EffectiveTemp:      math.Pow(w.Sunlight/4*(1-w.BondAlbedo)/stefanBoltzmann, 0.25),
+		EffectiveTemp:      quick.EffectiveTemperature(),
 		ScaleHeight:        column.ScaleHeight(0),
 		Area:               p.area,
 		ThermalEdges:       greenhouse.ThermalEdges(),
@@ -49,6 +49,3 @@ func newPlanet(s *Study) (*planet, error) {
 	}
 	return p, nil
 }
-
-// stefanBoltzmann is the Stefan-Boltzmann constant [W/m2/K4] (CODATA 2018).
-const stefanBoltzmann = 5.670374419e-8

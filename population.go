@@ -162,7 +162,7 @@ func newPopulation(q Particle, planckTemperature float64) (*population, error) {
 		return nil, err
 	}
 	for i, f := range radioFrequencies {
-		x, err := p.perKg(lightSpeed / f)
+		x, err := p.perKg(material.LightSpeed / f)
 		if err != nil {
 			p.noRadio = "no optical data at radio wavelengths: " + err.Error()
 			break
@@ -182,9 +182,6 @@ func newPopulation(q Particle, planckTemperature float64) (*population, error) {
 
 // heldWarned is the share of a spectrum on held index values above which it is said.
 const heldWarned = 0.01
-
-// lightSpeed in vacuum [m/s], exact by definition.
-const lightSpeed = 299792458.0
 
 // perKg returns the size-averaged optics at one wavelength [m], per kilogram.
 func (p *population) perKg(wavelength float64) (SpectrumPoint, error) {

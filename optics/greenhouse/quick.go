@@ -111,6 +111,16 @@ func (q *Quick) Planet() Planet { return q.planet }
 // Baseline returns the state without aerosol: ground temperature [K], sunlight and outgoing spectrum.
 func (q *Quick) Baseline() State { return q.base.clone() }
 
+// EffectiveTemperature returns the temperature [K] of a black body that sends back the sunlight
+// the planet takes in,
+//
+//	T = (S (1 - A) / (4 sigma))^(1/4)
+//
+// with sunlight S at normal incidence and Bond albedo A.
+func (q *Quick) EffectiveTemperature() float64 {
+	return math.Pow(q.planet.Sunlight/4*(1-q.planet.BondAlbedo)/stefanBoltzmann, 0.25)
+}
+
 // GroundAlbedo returns the albedo of the ground [1] with which ground and dust have the planet's Bond albedo.
 func (q *Quick) GroundAlbedo() float64 { return q.sun.ground }
 

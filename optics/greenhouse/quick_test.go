@@ -12,7 +12,7 @@ import (
 // Mars fact sheet: 586.2 W/m2 and Bond albedo 0.25 give a black-body temperature of 209.8 K.
 func TestBaseline_FactSheetEffectiveTemperature(t *testing.T) {
 	p := BaselinePlanet()
-	got := math.Pow(p.Sunlight/4*(1-p.BondAlbedo)/stefanBoltzmann, 0.25)
+	got := mustQuick(t, p).EffectiveTemperature()
 	if math.Abs(got-209.8) > 0.05 {
 		t.Errorf("effective temperature %.2f K, fact sheet has 209.8 K", got)
 	}

@@ -109,15 +109,14 @@ func Names() []string {
 	return names
 }
 
-// ByName returns a built-in material. Error: an unknown name, with the known ones and the
-// nearest.
+// ByName returns a built-in material. Error: an unknown name, with the known ones.
 func ByName(name string) (*Material, error) {
 	for _, s := range substances() {
 		if s.name == name {
 			return s.build(), nil
 		}
 	}
-	return nil, fmt.Errorf("unknown material %q (did you mean %q?); known: %s", name, nearest(name, Names()), strings.Join(Names(), ", "))
+	return nil, fmt.Errorf("unknown material %q; known: %s", name, strings.Join(Names(), ", "))
 }
 
 func (s substance) build() *Material {
@@ -174,37 +173,4 @@ func (c *curve) points(b beyond) *points {
 	x := math.Log(p.last)
 	p.tail = b.law(p.last, complex(p.n.Predict(x), p.k.Predict(x)))
 	return p
-}
-
-// nearest returns the candidate with the fewest single-letter edits from name.
-func nearest(name string, candidates []string) string {
-	best, least := "", math.MaxInt
-	for _, c := range candidates {
-		if d := edits(name, c); d < least {
-			best, least = c, d
-		}
-	}
-	return best
-}
-
-// edits is the Levenshtein distance; names beyond 64 bytes are cut, they match nothing anyway.
-func edits(a, b string) int {
-	a = a[:min(len(a), 64)]
-	row := make([]int, len(b)+1)
-	for j := range row {
-		row[j] = j
-	}
-	for i := range len(a) {
-		diagonal := row[0]
-		row[0] = i + 1
-		for j := range len(b) {
-			cost := diagonal
-			if a[i] != b[j] {
-				cost++
-			}
-			diagonal = row[j+1]
-			row[j+1] = min(cost, row[j]+1, row[j+1]+1)
-		}
-	}
-	return row[len(b)]
 }

@@ -60,6 +60,9 @@ type Axis struct {
 	law law
 }
 
+// LightSpeed is the speed of light in vacuum [m/s], exact by definition of the metre.
+const LightSpeed = 299792458.0
+
 // Answer is yes, no or, for the materials of users' tables, unknown.
 type Answer string
 

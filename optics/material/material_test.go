@@ -229,8 +229,13 @@ func TestIndex_outOfRange(t *testing.T) {
 
 func TestByName_unknown(t *testing.T) {
 	_, err := ByName("alumnium")
-	if err == nil || !strings.Contains(err.Error(), `"aluminium"`) || !strings.Contains(err.Error(), "water-ice") {
-		t.Errorf("error %v: want the nearest name and the list", err)
+	if err == nil || !strings.Contains(err.Error(), `"alumnium"`) {
+		t.Fatalf("error %v: want the name as given", err)
+	}
+	for _, name := range Names() {
+		if !strings.Contains(err.Error(), name) {
+			t.Errorf("error %v does not list %s", err, name)
+		}
 	}
 }
 

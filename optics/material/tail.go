@@ -128,7 +128,7 @@ const (
 )
 
 func hufford(wavelength float64) float64 {
-	f := 299792458 / wavelength * 1e-9
+	f := LightSpeed / wavelength * 1e-9
 	alpha := (50.4 + 62*iceTheta) * 1e-4 * math.Exp(-22.1*iceTheta)
 	ratio := (1 + iceTheta) / (iceTheta + 0.0073)
 	beta := (0.502-0.131*iceTheta)/(1+iceTheta)*1e-4 + 0.542e-6*ratio*ratio
